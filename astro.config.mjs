@@ -1,0 +1,35 @@
+import node from '@astrojs/node';
+import react from '@astrojs/react';
+import tailwindcss from '@tailwindcss/vite';
+import auth from 'auth-astro';
+import { defineConfig } from 'astro/config';
+
+export default defineConfig({
+  output: 'server',
+  adapter: node({ mode: 'standalone' }),
+  integrations: [react(), auth()],
+  trailingSlash: 'never',
+  devToolbar: { enabled: false },
+  // The host is checked against the configured origins in src/middleware.ts; without an entry here the
+  // production build takes itself for http://localhost and refuses every form.
+  security: {
+    checkOrigin: false,
+    allowedDomains: [{ protocol: 'http' }, { protocol: 'https' }],
+  },
+  experimental: {
+    csp: {
+      // FullCalendar 6 inserts an empty style element; this is the hash of the empty string.
+      styleDirective: { hashes: ['sha256-47DEQpj8HBSa+/TImW+5JCeuQeRkm5NMpJWZG3hSuFU='] },
+      directives: [
+        "default-src 'self'",
+        "img-src 'self' data:",
+        "font-src 'self'",
+        "connect-src 'self'",
+        "object-src 'none'",
+        "base-uri 'self'",
+        "form-action 'self'",
+      ],
+    },
+  },
+  vite: { plugins: [tailwindcss()] },
+});

@@ -1,0 +1,7 @@
+import type { Migration } from 'kysely';
+import { migration0001 } from './0001_ground';
+
+/** Every migration in order. A landed one is frozen: changes go into a new one. */
+export const migrations: Record<string, Migration> = {
+  '0001_ground': migration0001,
+};

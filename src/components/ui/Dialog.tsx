@@ -1,0 +1,31 @@
+import { useEffect, useId, useRef, type ReactNode } from 'react';
+
+interface Props {
+  open: boolean;
+  /** The question the dialog asks. */
+  title: string;
+  onClose: () => void;
+  children: ReactNode;
+}
+
+/** A modal dialog on the browser's own element: focus stays inside, Escape closes, focus returns. */
+export function Dialog({ open, title, onClose, children }: Props) {
+  const element = useRef<HTMLDialogElement>(null);
+  const titleId = useId();
+  useEffect(() => {
+    const dialog = element.current;
+    if (!dialog) return;
+    if (open && !dialog.open) dialog.showModal();
+    if (!open && dialog.open) dialog.close();
+  }, [open]);
+  return (
+    <dialog ref={element} className="dialog" aria-labelledby={titleId} onClose={onClose}>
+      {open ? (
+        <div className="stack">
+          <h2 id={titleId}>{title}</h2>
+          {children}
+        </div>
+      ) : null}
+    </dialog>
+  );
+}

@@ -1,0 +1,58 @@
+/** Every address of the application. Nothing else spells one out. */
+export const paths = {
+  home: '/',
+  register: '/register',
+  registered: '/registered',
+  signIn: '/sign-in',
+  signInLink: '/sign-in/link',
+  forgotten: '/forgotten',
+  account: '/account',
+  confirmMail: (secret: string) => `/confirm/${secret}`,
+  useSignInLink: (secret: string) => `/sign-in/link/${secret}`,
+  resetPassword: (secret: string) => `/reset/${secret}`,
+  joinCrew: (secret: string) => `/join/${secret}`,
+
+  windows: '/windows',
+  windowsWith: (stationIds: readonly string[], band?: string) =>
+    `/windows?${new URLSearchParams([
+      ...stationIds.map((id) => ['station', id]),
+      ...(band ? [['band', band]] : []),
+    ]).toString()}`,
+
+  skeds: '/skeds',
+  sked: (id: string) => `/skeds/${id}`,
+  calendar: '/calendar',
+
+  stations: '/stations',
+  newStation: '/stations/new',
+  station: (id: string) => `/stations/${id}`,
+  stationPlace: (id: string) => `/stations/${id}/place`,
+  stationSky: (id: string) => `/stations/${id}/sky`,
+  stationEquipment: (id: string) => `/stations/${id}/equipment`,
+  stationHours: (id: string) => `/stations/${id}/hours`,
+  stationCrew: (id: string) => `/stations/${id}/crew`,
+
+  people: '/admin/people',
+  method: '/method',
+  help: (slug: string) => `/help/${slug}`,
+
+  api: {
+    moon: '/api/v1/moon',
+    windows: '/api/v1/windows',
+    openapi: '/api/v1/openapi.json',
+    stations: '/api/v1/stations',
+    station: (id: string) => `/api/v1/stations/${id}`,
+    stationPlace: (id: string) => `/api/v1/stations/${id}/place`,
+    stationSky: (id: string) => `/api/v1/stations/${id}/sky`,
+    stationEquipment: (id: string) => `/api/v1/stations/${id}/equipment`,
+    stationHours: (id: string) => `/api/v1/stations/${id}/hours`,
+    skeds: '/api/v1/skeds',
+    sked: (id: string) => `/api/v1/skeds/${id}`,
+    skedMove: (id: string) => `/api/v1/skeds/${id}/move`,
+    skedAccept: (id: string) => `/api/v1/skeds/${id}/accept`,
+    skedDecline: (id: string) => `/api/v1/skeds/${id}/decline`,
+    skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
+    skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
+    skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+  },
+} as const;

@@ -1,0 +1,104 @@
+import { mkdirSync } from 'node:fs';
+import path from 'node:path';
+import { z } from 'zod';
+
+const port = z.coerce.number().int().min(1).max(65535);
+
+const environmentSchema = z.object({
+  PUBLIC_URL: z.url({ protocol: /^https?$/ }),
+  HOST: z.string().default('127.0.0.1'),
+  PORT: port.default(4321),
+  DATA_DIR: z.string().min(1),
+  SMTP_HOST: z.string().min(1),
+  SMTP_PORT: port.default(587),
+  SMTP_USER: z.string().optional(),
+  SMTP_PASSWORD: z.string().optional(),
+  SMTP_TLS: z.enum(['none', 'starttls', 'tls']).default('starttls'),
+  MAIL_FROM: z.string().min(3),
+  TRUST_PROXY: z.enum(['yes', 'no']).default('no'),
+  CALCULATOR_REQUESTS_PER_MINUTE: z.coerce.number().int().min(1).default(120),
+  SIGN_IN_ATTEMPTS_PER_MINUTE: z.coerce.number().int().min(1).default(10),
+  LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
+  DEMO: z.enum(['yes', 'no']).default('no'),
+});
+
+export interface Config {
+  /** Origin of every link that leaves the server, without a trailing slash. */
+  publicUrl: string;
+  host: string;
+  port: number;
+  dataDir: string;
+  databaseFile: string;
+  smtp: {
+    host: string;
+    port: number;
+    user: string | undefined;
+    password: string | undefined;
+    tls: 'none' | 'starttls' | 'tls';
+    from: string;
+  };
+  /** Whether X-Forwarded-For comes from a proxy that sets it. */
+  trustProxy: boolean;
+  calculatorRequestsPerMinute: number;
+  signInAttemptsPerMinute: number;
+  logLevel: string;
+  /** Shows the demo sign-ins on the sign-in page. Never set in production. */
+  demo: boolean;
+}
+
+export class ConfigurationMissing extends Error {
+  constructor(sentence: string) {
+    super(sentence);
+    this.name = 'ConfigurationMissing';
+  }
+}
+
+/** Reads the environment. Throws `ConfigurationMissing` with one sentence naming everything that is wrong. */
+export function readConfig(environment: NodeJS.ProcessEnv): Config {
+  const given = Object.fromEntries(
+    Object.entries(environment).filter(([, value]) => value !== undefined && value !== ''),
+  );
+  const parsed = environmentSchema.safeParse(given);
+  if (!parsed.success) {
+    const wrong = parsed.error.issues.map((issue) => {
+      const name = String(issue.path[0]);
+      return name in given ? `${name} is "${given[name]}", which is not usable` : `${name} is missing`;
+    });
+    throw new ConfigurationMissing(
+      `Echotide cannot start: ${wrong.join('; ')}. .env.example explains each setting.`,
+    );
+  }
+  const env = parsed.data;
+  const dataDir = path.resolve(env.DATA_DIR);
+  return {
+    publicUrl: new URL(env.PUBLIC_URL).origin,
+    host: env.HOST,
+    port: env.PORT,
+    dataDir,
+    databaseFile: path.join(dataDir, 'echotide.sqlite'),
+    smtp: {
+      host: env.SMTP_HOST,
+      port: env.SMTP_PORT,
+      user: env.SMTP_USER,
+      password: env.SMTP_PASSWORD,
+      tls: env.SMTP_TLS,
+      from: env.MAIL_FROM,
+    },
+    trustProxy: env.TRUST_PROXY === 'yes',
+    calculatorRequestsPerMinute: env.CALCULATOR_REQUESTS_PER_MINUTE,
+    signInAttemptsPerMinute: env.SIGN_IN_ATTEMPTS_PER_MINUTE,
+    logLevel: env.LOG_LEVEL,
+    demo: env.DEMO === 'yes',
+  };
+}
+
+let current: Config | undefined;
+
+/** The configuration of this process, read once. */
+export function config(): Config {
+  if (!current) {
+    current = readConfig(process.env);
+    mkdirSync(current.dataDir, { recursive: true });
+  }
+  return current;
+}

@@ -7,9 +7,11 @@ import { defineConfig } from 'astro/config';
 export default defineConfig({
   output: 'server',
   adapter: node({ mode: 'standalone' }),
-  integrations: [react(), auth()],
+  integrations: [react(), auth({ injectEndpoints: false })],
   trailingSlash: 'never',
   devToolbar: { enabled: false },
+  // Highlighting writes style attributes, which the content security policy refuses.
+  markdown: { syntaxHighlight: false },
   // The host is checked against the configured origins in src/middleware.ts; without an entry here the
   // production build takes itself for http://localhost and refuses every form.
   security: {
@@ -31,5 +33,6 @@ export default defineConfig({
       ],
     },
   },
-  vite: { plugins: [tailwindcss()] },
+  // Nothing from .env may get into the build; the server reads its environment when it starts.
+  vite: { envDir: false, plugins: [tailwindcss()] },
 });

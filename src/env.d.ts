@@ -5,5 +5,7 @@ declare namespace App {
     /** The signed-in person, or null. Set by the middleware on every request. */
     viewer: import('./server/auth/viewer').Viewer | null;
     requestId: string;
+    /** What the error page says; set by the middleware before it shows that page. */
+    failure?: import('./server/http/failure').Failure;
   }
 }

@@ -5,6 +5,7 @@ export const paths = {
   registered: '/registered',
   signIn: '/sign-in',
   signInLink: '/sign-in/link',
+  signOut: '/sign-out',
   forgotten: '/forgotten',
   account: '/account',
   confirmMail: (secret: string) => `/confirm/${secret}`,
@@ -21,6 +22,9 @@ export const paths = {
 
   skeds: '/skeds',
   sked: (id: string) => `/skeds/${id}`,
+  /** Page that asks for words and a second press: decline, withdraw or cancel. */
+  skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
+  skedMove: (id: string) => `/skeds/${id}/move`,
   calendar: '/calendar',
 
   stations: '/stations',
@@ -31,14 +35,19 @@ export const paths = {
   stationEquipment: (id: string) => `/stations/${id}/equipment`,
   stationHours: (id: string) => `/stations/${id}/hours`,
   stationCrew: (id: string) => `/stations/${id}/crew`,
+  stationProfile: (id: string) => `/stations/${id}/profile`,
 
   people: '/admin/people',
+  /** Shown in place of a page that failed, never linked to. */
+  problem: '/problem',
   method: '/method',
   help: (slug: string) => `/help/${slug}`,
 
   api: {
     moon: '/api/v1/moon',
     windows: '/api/v1/windows',
+    searchData: '/api/v1/stations/search-data',
+    link: '/api/v1/link',
     openapi: '/api/v1/openapi.json',
     stations: '/api/v1/stations',
     station: (id: string) => `/api/v1/stations/${id}`,
@@ -46,6 +55,12 @@ export const paths = {
     stationSky: (id: string) => `/api/v1/stations/${id}/sky`,
     stationEquipment: (id: string) => `/api/v1/stations/${id}/equipment`,
     stationHours: (id: string) => `/api/v1/stations/${id}/hours`,
+    stationProfile: (id: string) => `/api/v1/stations/${id}/profile`,
+    stationInvitations: (id: string) => `/api/v1/stations/${id}/invitations`,
+    stationInvitation: (id: string, invitationId: string) =>
+      `/api/v1/stations/${id}/invitations/${invitationId}`,
+    stationCrew: (id: string) => `/api/v1/stations/${id}/crew`,
+    stationCrewMember: (id: string, personId: string) => `/api/v1/stations/${id}/crew/${personId}`,
     skeds: '/api/v1/skeds',
     sked: (id: string) => `/api/v1/skeds/${id}`,
     skedMove: (id: string) => `/api/v1/skeds/${id}/move`,
@@ -54,5 +69,6 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    calendar: '/api/v1/calendar',
   },
 } as const;

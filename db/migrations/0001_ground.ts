@@ -78,6 +78,7 @@ const statements = [
     state TEXT NOT NULL CHECK (state IN
       ('offered', 'agreed', 'declined', 'withdrawn', 'lapsed', 'cancelled', 'reported')),
     version INTEGER NOT NULL DEFAULT 1,
+    offered_by TEXT NOT NULL REFERENCES station (id),
     start_at INTEGER NOT NULL,
     end_at INTEGER NOT NULL,
     created_at INTEGER NOT NULL,

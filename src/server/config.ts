@@ -15,6 +15,7 @@ const environmentSchema = z.object({
   SMTP_PASSWORD: z.string().optional(),
   SMTP_TLS: z.enum(['none', 'starttls', 'tls']).default('starttls'),
   MAIL_FROM: z.string().min(3),
+  MAIL_LEASE_SECONDS: z.coerce.number().min(1).max(3600).default(60),
   TRUST_PROXY: z.enum(['yes', 'no']).default('no'),
   CALCULATOR_REQUESTS_PER_MINUTE: z.coerce.number().int().min(1).default(120),
   SIGN_IN_ATTEMPTS_PER_MINUTE: z.coerce.number().int().min(1).default(10),
@@ -37,6 +38,8 @@ export interface Config {
     tls: 'none' | 'starttls' | 'tls';
     from: string;
   };
+  /** How long a mail taken by the worker is its own; after that another attempt is made. */
+  mailLeaseMs: number;
   /** Whether X-Forwarded-For comes from a proxy that sets it. */
   trustProxy: boolean;
   calculatorRequestsPerMinute: number;
@@ -62,20 +65,20 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
   if (!parsed.success) {
     const wrong = parsed.error.issues.map((issue) => {
       const name = String(issue.path[0]);
-      return name in given ? `${name} is "${given[name]}", which is not usable` : `${name} is missing`;
+      return name in given
+        ? `${name} is "${given[name]}", which is not usable`
+        : `${name} is missing`;
     });
     throw new ConfigurationMissing(
       `Echotide cannot start: ${wrong.join('; ')}. .env.example explains each setting.`,
     );
   }
   const env = parsed.data;
-  const dataDir = path.resolve(env.DATA_DIR);
   return {
     publicUrl: new URL(env.PUBLIC_URL).origin,
     host: env.HOST,
     port: env.PORT,
-    dataDir,
-    databaseFile: path.join(dataDir, 'echotide.sqlite'),
+    ...readDataFiles(given),
     smtp: {
       host: env.SMTP_HOST,
       port: env.SMTP_PORT,
@@ -84,12 +87,24 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
       tls: env.SMTP_TLS,
       from: env.MAIL_FROM,
     },
+    mailLeaseMs: env.MAIL_LEASE_SECONDS * 1000,
     trustProxy: env.TRUST_PROXY === 'yes',
     calculatorRequestsPerMinute: env.CALCULATOR_REQUESTS_PER_MINUTE,
     signInAttemptsPerMinute: env.SIGN_IN_ATTEMPTS_PER_MINUTE,
     logLevel: env.LOG_LEVEL,
     demo: env.DEMO === 'yes',
   };
+}
+
+/** The data folder and database file alone, for commands that need nothing else. */
+export function readDataFiles(
+  environment: NodeJS.ProcessEnv,
+): Pick<Config, 'dataDir' | 'databaseFile'> {
+  if (!environment['DATA_DIR']) {
+    throw new ConfigurationMissing('DATA_DIR is missing: name the folder that holds the database.');
+  }
+  const dataDir = path.resolve(environment['DATA_DIR']);
+  return { dataDir, databaseFile: path.join(dataDir, 'echotide.sqlite') };
 }
 
 let current: Config | undefined;

@@ -126,26 +126,27 @@ export function positionToLocator(
   if (!(Math.abs(longitudeDeg) <= 180)) {
     throw new LocatorError(`Longitude ${longitudeDeg} is outside −180 … 180.`);
   }
-  const pairs = PAIRS.slice(0, length / 2);
-  const cellsAround = pairs.reduce((cells, pair) => cells * pair.steps, 1);
-  let east = cellIndex((longitudeDeg + 180) / 360, cellsAround);
-  let north = cellIndex((latitudeDeg + 90) / 180, cellsAround);
+  // Always found to ten characters and then cut, so that a shorter locator is the start of a longer one.
+  let east = finestCell((longitudeDeg + 180) / 360);
+  let north = finestCell((latitudeDeg + 90) / 180);
   let locator = '';
-  for (const pair of [...pairs].reverse()) {
+  for (const pair of [...PAIRS].reverse()) {
     locator =
       characterOf(east % pair.steps, pair) + characterOf(north % pair.steps, pair) + locator;
     east = Math.floor(east / pair.steps);
     north = Math.floor(north / pair.steps);
   }
-  return locator;
+  return locator.slice(0, length);
 }
 
-/** Index of the cell; a position within a millionth of a cell of an edge counts as on it. */
-function cellIndex(share: number, cells: number): number {
-  const at = share * cells;
+const FINEST_CELLS = PAIRS.reduce((cells, pair) => cells * pair.steps, 1);
+
+/** Index of the ten-character cell; within a millionth of a cell of an edge counts as on it. */
+function finestCell(share: number): number {
+  const at = share * FINEST_CELLS;
   const nearest = Math.round(at);
   const index = Math.abs(at - nearest) < 1e-6 ? nearest : Math.floor(at);
-  return Math.min(index, cells - 1);
+  return Math.min(index, FINEST_CELLS - 1);
 }
 
 export function isLocator(text: string): boolean {

@@ -1,10 +1,6 @@
 /** A station's equipment on one band, as the link budget reads it. */
 export type Polarization =
-  | 'horizontal'
-  | 'vertical'
-  | 'rightCircular'
-  | 'leftCircular'
-  | 'rotatable';
+  'horizontal' | 'vertical' | 'rightCircular' | 'leftCircular' | 'rotatable';
 
 export type Antenna =
   | { kind: 'dish'; diameterM: number; apertureEfficiency: number }

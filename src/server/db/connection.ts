@@ -1,5 +1,6 @@
 import Database from 'better-sqlite3';
-import { Kysely, SqliteDialect } from 'kysely';
+import { CompiledQuery, Kysely, SqliteAdapter, SqliteDialect, SqliteDriver } from 'kysely';
+import type { DatabaseConnection } from 'kysely';
 import type { Tables } from './tables';
 
 export type Db = Kysely<Tables>;
@@ -9,17 +10,17 @@ export type Db = Kysely<Tables>;
  * Throws `DatabaseBroken` when the file is not a usable SQLite database.
  */
 export function openDatabase(file: string): Db {
-  const sqlite = openSqlite(file);
-  return new Kysely<Tables>({ dialect: new SqliteDialect({ database: sqlite }) });
+  return new Kysely<Tables>({ dialect: new Dialect(openSqlite(file)) });
 }
 
 export function openSqlite(file: string): Database.Database {
   try {
     const sqlite = new Database(file);
+    // Before journal_mode: switching to WAL needs a lock that another process may hold for a moment.
+    sqlite.pragma('busy_timeout = 5000');
     sqlite.pragma('journal_mode = WAL');
     sqlite.pragma('synchronous = FULL');
     sqlite.pragma('foreign_keys = ON');
-    sqlite.pragma('busy_timeout = 5000');
     return sqlite;
   } catch (cause) {
     throw new DatabaseBroken(file, cause);
@@ -31,5 +32,36 @@ export class DatabaseBroken extends Error {
     const why = cause instanceof Error ? cause.message : String(cause);
     super(`The database ${file} cannot be opened: ${why}.`, { cause });
     this.name = 'DatabaseBroken';
+  }
+}
+
+class Dialect extends SqliteDialect {
+  readonly #database: Database.Database;
+
+  constructor(database: Database.Database) {
+    super({ database });
+    this.#database = database;
+  }
+
+  override createAdapter(): SqliteAdapter {
+    return new Adapter();
+  }
+
+  override createDriver(): SqliteDriver {
+    return new Driver({ database: this.#database });
+  }
+}
+
+/** Kysely migrates SQLite outside of a transaction unless told that SQLite can do better. */
+class Adapter extends SqliteAdapter {
+  override get supportsTransactionalDdl(): boolean {
+    return true;
+  }
+}
+
+/** Takes the write lock at the start: a transaction that reads first and writes later would fail. */
+class Driver extends SqliteDriver {
+  override async beginTransaction(connection: DatabaseConnection): Promise<void> {
+    await connection.executeQuery(CompiledQuery.raw('begin immediate'));
   }
 }

@@ -83,6 +83,8 @@ export interface SkedTable {
   mode: ModeId;
   state: SkedState;
   version: Generated<number>;
+  /** Station whose offer the slot is. */
+  offered_by: string;
   start_at: number;
   end_at: number;
   created_at: number;

@@ -15,7 +15,9 @@ const inside = new AsyncLocalStorage<true>();
  */
 export async function inTransaction<T>(db: Db, work: (tx: Tx) => Promise<T>): Promise<T> {
   if (inside.getStore()) {
-    throw new Error('inTransaction() inside a transaction: pass the transaction handle on instead.');
+    throw new Error(
+      'inTransaction() inside a transaction: pass the transaction handle on instead.',
+    );
   }
   return inside.run(true, () =>
     db.connection().execute(async (connection) => {

@@ -1,6 +1,14 @@
 import type { APIContext } from 'astro';
 import { z } from 'zod';
-import { AppError, BodyTooLarge, Conflict, InvalidInput, TooManyRequests, UnsupportedType } from '../errors';
+import {
+  AppError,
+  BodyTooLarge,
+  Conflict,
+  InvalidInput,
+  TooManyRequests,
+  UnsupportedType,
+  type FieldProblem,
+} from '../errors';
 import { log } from '../log';
 
 const MAX_JSON_BYTES = 1_000_000;
@@ -8,7 +16,11 @@ const MAX_JSON_BYTES = 1_000_000;
 export function json(body: unknown, status = 200, headers: Record<string, string> = {}): Response {
   return new Response(JSON.stringify(body), {
     status,
-    headers: { 'content-type': 'application/json; charset=utf-8', 'cache-control': 'no-store', ...headers },
+    headers: {
+      'content-type': 'application/json; charset=utf-8',
+      'cache-control': 'no-store',
+      ...headers,
+    },
   });
 }
 
@@ -57,7 +69,10 @@ export function endpoint(
 }
 
 /** Reads and checks a JSON body. Throws `UnsupportedType`, `BodyTooLarge` or `InvalidInput`. */
-export async function readJson<T extends z.ZodType>(request: Request, schema: T): Promise<z.output<T>> {
+export async function readJson<T extends z.ZodType>(
+  request: Request,
+  schema: T,
+): Promise<z.output<T>> {
   const type = request.headers.get('content-type') ?? '';
   if (!/^application\/json\b/i.test(type)) {
     throw new UnsupportedType('Send the body as application/json.');
@@ -97,11 +112,26 @@ export function checked<T extends z.ZodType>(schema: T, value: unknown): z.outpu
 }
 
 export function invalidInputFrom(error: z.ZodError): InvalidInput {
-  const fields = error.issues.map((issue) => ({
-    path: issue.path.map(String).join('.'),
-    message: issue.message,
-  }));
+  const fields = error.issues.flatMap((issue) => fieldProblems(issue, []));
   const first = fields[0];
-  const message = first ? `${first.path ? `${first.path}: ` : ''}${first.message}` : 'The input is not valid.';
+  const message = first
+    ? `${first.path ? `${first.path}: ` : ''}${first.message}`
+    : 'The input is not valid.';
   return new InvalidInput(message, fields);
+}
+
+/**
+ * One issue as problems with their places. Of a choice between several shapes the one whose fields were meant is told
+ * in detail, when only one knows all the fields that were sent.
+ */
+function fieldProblems(issue: z.core.$ZodIssue, outer: PropertyKey[]): FieldProblem[] {
+  const path = [...outer, ...issue.path];
+  if (issue.code === 'invalid_union') {
+    const meant = issue.errors.filter(
+      (branch) =>
+        !branch.some(({ code, path }) => code === 'unrecognized_keys' && path.length === 0),
+    );
+    if (meant.length === 1) return meant[0]!.flatMap((inner) => fieldProblems(inner, path));
+  }
+  return [{ path: path.map(String).join('.'), message: issue.message }];
 }

@@ -30,22 +30,22 @@ function text({ title, paragraphs, facts = [], button, footer }: MailContent): s
 
 function html({ title, paragraphs, facts = [], button, footer }: MailContent): string {
   const row = ([label, value]: [string, string]): string =>
-    `<tr><td class="quiet" style="${FONT};font-size:15px;line-height:22px;color:#55606b;padding:2px 16px 2px 0;vertical-align:top">${escape(label)}</td>` +
-    `<td class="ink" style="${FONT};font-size:15px;line-height:22px;color:#1b2229;padding:2px 0;vertical-align:top">${escape(value)}</td></tr>`;
+    `<tr><td class="quiet" style="${FONT};font-size:15px;line-height:22px;color:#44535a;padding:2px 16px 2px 0;vertical-align:top">${escape(label)}</td>` +
+    `<td class="ink" style="${FONT};font-size:15px;line-height:22px;color:#15222a;padding:2px 0;vertical-align:top">${escape(value)}</td></tr>`;
   const parts = [
-    `<h1 class="ink" style="${FONT};font-size:21px;line-height:28px;font-weight:600;color:#1b2229;margin:0 0 14px">${escape(title)}</h1>`,
+    `<h1 class="ink" style="${FONT};font-size:21px;line-height:28px;font-weight:600;color:#15222a;margin:0 0 14px">${escape(title)}</h1>`,
     ...paragraphs.map(
       (paragraph) =>
-        `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#1b2229;margin:0 0 14px">${escape(paragraph)}</p>`,
+        `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#15222a;margin:0 0 14px">${escape(paragraph)}</p>`,
     ),
     facts.length > 0
       ? `<table role="presentation" cellpadding="0" cellspacing="0" border="0" style="margin:0 0 18px">${facts.map(row).join('')}</table>`
       : '',
     button
-      ? `<p style="margin:0 0 10px"><a class="button" href="${escape(button.url)}" style="${FONT};display:inline-block;font-size:16px;line-height:24px;font-weight:600;color:#ffffff;background-color:#1f5f8b;padding:9px 18px;border-radius:6px;text-decoration:none">${escape(button.label)}</a></p>` +
-        `<p class="quiet" style="${FONT};font-size:13px;line-height:19px;color:#55606b;margin:0 0 18px;word-break:break-all">${escape(button.url)}</p>`
+      ? `<p style="margin:0 0 10px"><a class="button" href="${escape(button.url)}" style="${FONT};display:inline-block;font-size:16px;line-height:24px;font-weight:600;color:#f6f9f9;background-color:#14566b;padding:9px 18px;border-radius:2px;text-decoration:none">${escape(button.label)}</a></p>` +
+        `<p class="quiet" style="${FONT};font-size:13px;line-height:19px;color:#44535a;margin:0 0 18px;word-break:break-all">${escape(button.url)}</p>`
       : '',
-    `<p class="quiet rule" style="${FONT};font-size:13px;line-height:19px;color:#55606b;border-top:1px solid #d5dbe0;padding-top:12px;margin:6px 0 0">${escape(footer)}</p>`,
+    `<p class="quiet rule" style="${FONT};font-size:13px;line-height:19px;color:#44535a;border-top:1px solid #cdd4d0;padding-top:12px;margin:6px 0 0">${escape(footer)}</p>`,
   ];
   return `<!doctype html>
 <html lang="en-GB">
@@ -58,19 +58,19 @@ function html({ title, paragraphs, facts = [], button, footer }: MailContent): s
 <style>
 :root { color-scheme: light dark; }
 @media (prefers-color-scheme: dark) {
-  .paper { background-color: #0f1419 !important; }
-  .sheet { background-color: #182028 !important; border-color: #303b46 !important; }
-  .ink { color: #e6ebef !important; }
-  .quiet { color: #a7b2bc !important; }
-  .rule { border-color: #303b46 !important; }
-  .button { color: #0f1419 !important; background-color: #8cc4ec !important; }
+  .paper { background-color: #16140f !important; }
+  .sheet { background-color: #1e1b16 !important; border-color: #35302a !important; }
+  .ink { color: #d0c7b7 !important; }
+  .quiet { color: #a89f91 !important; }
+  .rule { border-color: #35302a !important; }
+  .button { color: #10191a !important; background-color: #8bb9be !important; }
 }
 </style>
 </head>
-<body class="paper" style="margin:0;padding:0;background-color:#f3f5f6">
-<table role="presentation" class="paper" width="100%" cellpadding="0" cellspacing="0" border="0" style="background-color:#f3f5f6">
+<body class="paper" style="margin:0;padding:0;background-color:#f4f6f4">
+<table role="presentation" class="paper" width="100%" cellpadding="0" cellspacing="0" border="0" style="background-color:#f4f6f4">
 <tr><td align="center" style="padding:24px 12px">
-<table role="presentation" class="sheet" width="100%" cellpadding="0" cellspacing="0" border="0" style="max-width:560px;background-color:#ffffff;border:1px solid #d5dbe0;border-radius:8px">
+<table role="presentation" class="sheet" width="100%" cellpadding="0" cellspacing="0" border="0" style="max-width:560px;background-color:#fbfcfb;border:1px solid #cdd4d0;border-radius:2px">
 <tr><td align="left" style="padding:24px">
 ${parts.filter(Boolean).join('\n')}
 </td></tr>

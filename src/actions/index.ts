@@ -1,0 +1,5 @@
+import { people } from './people';
+import { skeds } from './skeds';
+
+/** Forms that work without JavaScript, by topic. */
+export const server = { people, skeds };

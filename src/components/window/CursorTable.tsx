@@ -1,0 +1,116 @@
+import type { MoonTable } from '../../domain/ephemeris';
+import { dopplerHz, pathLossDb } from '../../domain/link';
+import { formatClock, formatDoppler, formatLocal, formatNumber } from '../../domain/time/format';
+import type { Quality } from '../../domain/window/quality';
+import type { ChosenStation } from '../../domain/window/searchData';
+import { QualityChip } from '../ui/Quality';
+
+interface Props {
+  table: MoonTable;
+  stations: ChosenStation[];
+  cursorMs: number;
+  frequencyMhz: number;
+  quality: Quality;
+}
+
+/** Figures at the hand, a column for each station; for many stations a row each. */
+export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality }: Props) {
+  const samples = stations.map((station) => table.sample(station.site, cursorMs));
+  const clock = (station: ChosenStation) =>
+    station.timeZone === null ? '' : formatLocal(cursorMs, station.timeZone);
+  const doppler = (rateMps: number, otherMps?: number) =>
+    formatDoppler(dopplerHz(frequencyMhz, rateMps, otherMps), frequencyMhz).replace(/\s?Hz$/, '');
+  const rows = [
+    { name: 'Azimuth', unit: '°', values: samples.map((at) => formatNumber(at.azimuthDeg, 1)) },
+    { name: 'Elevation', unit: '°', values: samples.map((at) => formatNumber(at.elevationDeg, 1)) },
+    { name: 'Distance', unit: 'km', values: samples.map((at) => formatNumber(at.rangeKm)) },
+    { name: 'Own echo Doppler', unit: 'Hz', values: samples.map((at) => doppler(at.rangeRateMps)) },
+  ];
+  const [first, second] = samples;
+  return (
+    <>
+      {stations.length > 3 ? (
+        <div className="table-scroll">
+          <table className="figures table">
+            <thead>
+              <tr>
+                <th scope="col">At {formatClock(cursorMs)} UTC</th>
+                {rows.map((row) => (
+                  <th key={row.name} scope="col" className="figure">
+                    {row.name}, {row.unit}
+                  </th>
+                ))}
+              </tr>
+            </thead>
+            <tbody>
+              {stations.map((station, index) => (
+                <tr key={station.token}>
+                  <th scope="row">
+                    {station.callSign} <span className="label">{clock(station)}</span>
+                  </th>
+                  {rows.map((row) => (
+                    <td key={row.name} className="figure">
+                      {row.values[index]}
+                    </td>
+                  ))}
+                </tr>
+              ))}
+            </tbody>
+          </table>
+        </div>
+      ) : (
+        <table className="figures table">
+          <thead>
+            <tr>
+              <th scope="col">At {formatClock(cursorMs)} UTC</th>
+              {stations.map((station) => (
+                <th key={station.token} scope="col" className="figure">
+                  {station.callSign}
+                  <br />
+                  {clock(station)}
+                </th>
+              ))}
+              <th>
+                <span className="sr-only">Unit</span>
+              </th>
+            </tr>
+          </thead>
+          <tbody>
+            {rows.map((row) => (
+              <tr key={row.name}>
+                <th scope="row">{row.name}</th>
+                {row.values.map((value, index) => (
+                  <td key={stations[index]!.token} className="figure">
+                    {value}
+                  </td>
+                ))}
+                <td className="figures__unit">{row.unit}</td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      )}
+      <p className="figures__between">
+        {stations.length === 2 && first && second ? (
+          <span>
+            Between you: Doppler{' '}
+            <strong>
+              {formatDoppler(
+                dopplerHz(frequencyMhz, first.rangeRateMps, second.rangeRateMps),
+                frequencyMhz,
+              )}
+            </strong>
+            , path loss{' '}
+            <strong>
+              {formatNumber(pathLossDb(frequencyMhz, first.rangeKm, second.rangeKm), 1)} dB
+            </strong>
+            .
+          </span>
+        ) : null}
+        <span className="figures__quality">
+          Degradation <QualityChip quality={quality} />
+        </span>
+      </p>
+    </>
+  );
+}

@@ -1,0 +1,88 @@
+import { useEffect, useId, useRef, useState, type ReactNode } from 'react';
+import { Icon } from '../ui/Icon';
+
+interface ValuePickProps {
+  /** What the value is, for screen readers: "Lowest elevation at QA1LUN". */
+  label: string;
+  value: ReactNode;
+  /** Quiet words after the value. */
+  beside?: ReactNode;
+  plain?: boolean;
+  children: (close: () => void) => ReactNode;
+}
+
+/** A value of the sentence that opens a panel beneath it. The page stays usable while the panel is open. */
+export function ValuePick({ label, value, beside, plain = false, children }: ValuePickProps) {
+  const [open, setOpen] = useState(false);
+  const root = useRef<HTMLSpanElement>(null);
+  const button = useRef<HTMLButtonElement>(null);
+  const panelId = useId();
+  useEffect(() => {
+    if (!open) return;
+    const outside = (event: PointerEvent) => {
+      if (!root.current?.contains(event.target as Node)) setOpen(false);
+    };
+    document.addEventListener('pointerdown', outside);
+    return () => document.removeEventListener('pointerdown', outside);
+  }, [open]);
+  const close = () => {
+    setOpen(false);
+    button.current?.focus();
+  };
+  return (
+    <span
+      ref={root}
+      className="pick"
+      onKeyDown={(event) => {
+        if (event.key === 'Escape' && open) {
+          event.stopPropagation();
+          close();
+        }
+      }}
+    >
+      <button
+        ref={button}
+        type="button"
+        className={plain ? 'pick__plain' : 'pick__value'}
+        aria-expanded={open}
+        aria-controls={open ? panelId : undefined}
+        aria-label={plain ? undefined : label}
+        onClick={() => setOpen(!open)}
+      >
+        {plain ? <Icon name="plus" /> : null}
+        <span>{value}</span>
+        {beside ? <span className="pick__beside">{beside}</span> : null}
+      </button>
+      {open ? (
+        <div id={panelId} className="pick__panel" role="group" aria-label={label}>
+          {children(close)}
+        </div>
+      ) : null}
+    </span>
+  );
+}
+
+interface PickSelectProps {
+  label: string;
+  value: string;
+  options: { value: string; label: string }[];
+  onChange: (value: string) => void;
+}
+
+/** A value of the sentence chosen from the browser's own list. */
+export function PickSelect({ label, value, options, onChange }: PickSelectProps) {
+  return (
+    <select
+      className="pick__value pick__select"
+      aria-label={label}
+      value={value}
+      onChange={(event) => onChange(event.target.value)}
+    >
+      {options.map((option) => (
+        <option key={option.value} value={option.value}>
+          {option.label}
+        </option>
+      ))}
+    </select>
+  );
+}

@@ -1,0 +1,43 @@
+import type { SkedState } from '../sked/types';
+import type { Interval } from '../time/interval';
+import type { WindowStation } from './types';
+
+/** A station of the question as the windows page needs it. `callSign` is unique within one question. */
+export interface ChosenStation extends WindowStation {
+  /** What stands for it in the address. */
+  token: string;
+  /** Its id where it is listed; null for a bare place. */
+  id: string | null;
+  /** What its keepers call the place ("Baltic coast"). */
+  placeName: string | null;
+  locator: string;
+  /** Null where only a locator was given. */
+  timeZone: string | null;
+  /** Whether the viewer belongs to its crew. */
+  own: boolean;
+}
+
+/** A station that can be chosen from the list. */
+export interface StationChoice {
+  id: string;
+  callSign: string;
+  placeName: string | null;
+  own: boolean;
+}
+
+/** A stretch in which one of the chosen stations has a sked already. */
+export interface TakenSlot extends Interval {
+  state: Extract<SkedState, 'offered' | 'agreed'>;
+  /** Of the chosen stations, who is bound. */
+  callSigns: string[];
+  /** The sked's id where the viewer may open it. */
+  skedId: string | null;
+  /** With whom, where the viewer may know. */
+  partner: string | null;
+}
+
+/** What the server knows about the stations of a question within its dates. */
+export interface SearchData {
+  stations: ChosenStation[];
+  taken: TakenSlot[];
+}

@@ -1,0 +1,87 @@
+import { OpenAPIRegistry, OpenApiGeneratorV31 } from '@asteasolutions/zod-to-openapi';
+import type { z } from 'zod';
+import { paths } from '../../paths';
+import {
+  errorAnswerSchema,
+  moonAnswerSchema,
+  windowsAnswerSchema,
+} from '../windows/calculatorAnswers';
+import { moonRequestSchema, windowsRequestSchema } from '../windows/calculatorSchemas';
+import { linkAnswerSchema, linkRequestSchema } from '../windows/linkSchemas';
+
+/** A request that anybody may send; what it takes and gives are the schemas that check and type it. */
+interface OpenCalculator {
+  path: string;
+  summary: string;
+  request: z.ZodType;
+  answer: z.ZodType;
+}
+
+const CALCULATORS: readonly OpenCalculator[] = [
+  {
+    path: paths.api.moon,
+    summary: 'Where the Moon and the Sun stand for one site at given instants.',
+    request: moonRequestSchema,
+    answer: moonAnswerSchema,
+  },
+  {
+    path: paths.api.windows,
+    summary: 'When two to sixteen stations have the Moon in common, and why not at other hours.',
+    request: windowsRequestSchema,
+    answer: windowsAnswerSchema,
+  },
+  {
+    path: paths.api.link,
+    summary: 'How well two stations hear each other over the Moon at one instant, and why.',
+    request: linkRequestSchema,
+    answer: linkAnswerSchema,
+  },
+];
+
+const REFUSALS: Record<number, string> = {
+  400: 'The input is not valid; every problem is named with its path.',
+  413: 'The body is too large.',
+  415: 'The body is not application/json.',
+  429: 'Too many requests from this client; Retry-After says when to come back.',
+};
+
+let document: unknown;
+
+/** The OpenAPI 3.1 document of the open API, made from the schemas that check its input. */
+export function openApiDocument(): unknown {
+  document ??= buildDocument();
+  return document;
+}
+
+function buildDocument(): unknown {
+  const registry = new OpenAPIRegistry();
+  for (const { path, summary, request, answer } of CALCULATORS) {
+    registry.registerPath({
+      method: 'post',
+      path,
+      summary,
+      tags: ['Open calculators'],
+      security: [],
+      request: { body: { required: true, content: { 'application/json': { schema: request } } } },
+      responses: {
+        200: { description: 'The answer.', content: { 'application/json': { schema: answer } } },
+        ...Object.fromEntries(
+          Object.entries(REFUSALS).map(([status, description]) => [
+            status,
+            { description, content: { 'application/json': { schema: errorAnswerSchema } } },
+          ]),
+        ),
+      },
+    });
+  }
+  return new OpenApiGeneratorV31(registry.definitions).generateDocument({
+    openapi: '3.1.0',
+    info: {
+      title: 'Echotide',
+      version: '1',
+      description:
+        'Moonbounce geometry and windows. Names carry their unit; instants are ISO 8601 in UTC with Z.',
+    },
+    servers: [{ url: '/' }],
+  });
+}

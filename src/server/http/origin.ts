@@ -1,0 +1,44 @@
+import { paths } from '../../paths';
+
+const LOOPBACK = ['127.0.0.1', 'localhost', '[::1]'];
+
+/** Origins that are this server: the public one and, while that is a loopback one, its other names. */
+export function ownOrigins(publicUrl: string): string[] {
+  const url = new URL(publicUrl);
+  if (!LOOPBACK.includes(url.hostname)) return [url.origin];
+  const port = url.port ? `:${url.port}` : '';
+  return LOOPBACK.map((name) => `${url.protocol}//${name}${port}`);
+}
+
+/** Whether the host asked for, with its port, is this server. */
+export function isOwnHost(host: string, publicUrl: string): boolean {
+  const asked = host.toLowerCase();
+  return ownOrigins(publicUrl).some((origin) => {
+    const own = new URL(origin);
+    const withPort = own.port || (own.protocol === 'https:' ? '443' : '80');
+    return asked === own.host || asked === `${own.hostname}:${withPort}`;
+  });
+}
+
+const SAFE_METHODS = ['GET', 'HEAD', 'OPTIONS'];
+
+/** Stateless computations; they change nothing, so anybody may call them from anywhere. */
+const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, paths.api.link];
+
+interface Asked {
+  method: string;
+  pathname: string;
+  headers: Headers;
+}
+
+/**
+ * Whether a request may change something: it comes from a page of ours. Browsers always tell the
+ * origin of a POST from a form or a script; one that does not must at least say "same-origin".
+ */
+export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
+  if (SAFE_METHODS.includes(method.toUpperCase())) return true;
+  if (OPEN_CALCULATORS.includes(pathname)) return true;
+  const origin = headers.get('origin');
+  if (origin !== null) return ownOrigins(publicUrl).includes(origin);
+  return headers.get('sec-fetch-site') === 'same-origin';
+}

@@ -1,0 +1,53 @@
+import { deliverDue } from '../mail/deliver';
+import { smtpTransport } from '../mail/transport';
+import type { Services } from '../services';
+import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
+import { beat } from './heartbeat';
+import { removeOldTokens } from './removeOldTokens';
+import type { Job } from './runner';
+
+const SECOND_MS = 1000;
+const HOUR_MS = 3600 * SECOND_MS;
+/** Each carrier brings one mail at a time, so that a mail server that hangs holds up only one of them. */
+const CARRIERS = 4;
+
+/** Everything the background worker does, each on its own rhythm. */
+export function jobsOf(services: Services): Job[] {
+  const delivery = {
+    send: smtpTransport(services.config),
+    leaseMs: services.config.mailLeaseMs,
+    atOnce: 1,
+  };
+  const carriers = Array.from({ length: CARRIERS }, (_, place) => ({
+    name: `deliver mail ${place + 1}`,
+    everyMs: SECOND_MS,
+    run: async () => (await deliverDue(services, delivery)) > 0,
+  }));
+  return [
+    ...carriers,
+    {
+      name: 'lapse offers whose time came',
+      everyMs: 15 * SECOND_MS,
+      run: async () => {
+        await lapseDueSkeds(services);
+        return false;
+      },
+    },
+    {
+      name: 'remove old tokens',
+      everyMs: HOUR_MS,
+      run: async () => {
+        await removeOldTokens(services);
+        return false;
+      },
+    },
+    {
+      name: 'heartbeat',
+      everyMs: 10 * SECOND_MS,
+      run: async () => {
+        await beat(services);
+        return false;
+      },
+    },
+  ];
+}

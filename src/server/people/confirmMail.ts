@@ -1,0 +1,31 @@
+import { hashPassword } from '../auth/password';
+import type { PersonRow } from '../db/tables';
+import { inTransaction } from '../db/transaction';
+import { Forbidden } from '../errors';
+import type { Services } from '../services';
+import { getPerson } from './findPerson';
+import { consumeToken, voidTokens } from './tokens';
+
+/**
+ * Confirms the address behind the link and sets the first password. Returns the person, who may now
+ * be signed in. Throws `NotFound`, `Conflict` (used or too old) or `Forbidden` (locked).
+ */
+export async function confirmMail(
+  services: Services,
+  { secret, password }: { secret: string; password: string },
+): Promise<PersonRow> {
+  const passwordHash = await hashPassword(password);
+  return inTransaction(services.db, async (tx) => {
+    const personId = await consumeToken(tx, services, secret, 'confirmMail');
+    const person = await getPerson(tx, personId);
+    if (person.locked_at !== null) throw new Forbidden('This account is locked.');
+    const change = {
+      confirmed_at: services.now(),
+      password_hash: passwordHash,
+      sessions_valid_from: services.now(),
+    };
+    await tx.updateTable('person').set(change).where('id', '=', personId).execute();
+    await voidTokens(tx, services, personId, ['confirmMail']);
+    return { ...person, ...change };
+  });
+}

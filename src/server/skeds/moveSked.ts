@@ -1,0 +1,29 @@
+import type { z } from 'zod';
+import type { Viewer } from '../auth/viewer';
+import type { Services } from '../services';
+import { changeSked, type ChangeOutcome } from './change';
+import type { skedMoveSchema } from './schemas';
+import { requireMoon, slotWarnings } from './slotCheck';
+
+/**
+ * Offers another time for the sked; every other party has to answer again. An agreed slot is given up by it at once:
+ * the booking is freed, everybody's calendar entry is cancelled, and the mail says so. When the new time is
+ * agreed the entry comes back under the same UID. Throws as `changeSked`.
+ */
+export function moveSked(
+  services: Services,
+  viewer: Viewer,
+  skedId: string,
+  input: z.output<typeof skedMoveSchema>,
+): Promise<ChangeOutcome> {
+  const slot = { startMs: input.start, endMs: input.end };
+  return changeSked(services, viewer, {
+    skedId,
+    ...input,
+    command: (by) => ({ kind: 'move', by, version: input.version, slot }),
+    check: (tx, { stations }) => {
+      requireMoon(stations, slot);
+      return slotWarnings(tx, stations, slot, skedId);
+    },
+  });
+}

@@ -1,0 +1,19 @@
+import { linkPair30d } from './link';
+import { mergeResults, printResults, type Bench } from './results';
+import { windowsPair30d } from './windowsPair30d';
+
+const BENCHES: readonly Bench[] = [windowsPair30d, linkPair30d];
+
+const filter = process.argv[2] ?? '';
+const chosen = BENCHES.filter(({ name }) => name.startsWith(filter));
+if (chosen.length === 0) {
+  console.error(
+    `No benchmark begins with “${filter}”. There are: ${BENCHES.map(({ name }) => name).join(', ')}.`,
+  );
+  process.exit(1);
+}
+for (const bench of chosen) {
+  const results = await bench.run();
+  printResults(results);
+  mergeResults(results);
+}

@@ -1,0 +1,67 @@
+import { describe, expect, it } from 'vitest';
+import { paths } from '~/paths';
+import { isOwnHost, mayChange } from '~/server/http/origin';
+
+const PUBLIC = 'https://echotide.example';
+const LOCAL = 'http://127.0.0.1:4321';
+
+describe('isOwnHost', () => {
+  it.each([
+    ['echotide.example', PUBLIC],
+    ['ECHOTIDE.example', PUBLIC],
+    ['echotide.example:443', PUBLIC],
+    ['127.0.0.1:4321', LOCAL],
+    ['localhost:4321', LOCAL],
+    ['[::1]:4321', LOCAL],
+  ])('%s is %s', (host, publicUrl) => {
+    expect(isOwnHost(host, publicUrl)).toBe(true);
+  });
+
+  it.each([
+    ['', PUBLIC],
+    ['elsewhere.example', PUBLIC],
+    ['echotide.example.elsewhere.example', PUBLIC],
+    ['echotide.example:8080', PUBLIC],
+    ['localhost', PUBLIC],
+    ['127.0.0.1:4322', LOCAL],
+    ['127.0.0.1', LOCAL],
+    ['echotide.example:4321', LOCAL],
+  ])('%s is not %s', (host, publicUrl) => {
+    expect(isOwnHost(host, publicUrl)).toBe(false);
+  });
+});
+
+const asks = (method: string, headers: Record<string, string>, pathname = '/account') =>
+  mayChange({ method, pathname, headers: new Headers(headers) }, PUBLIC);
+
+describe('mayChange', () => {
+  it.each(['GET', 'HEAD', 'OPTIONS'])('%s needs no origin', (method) => {
+    expect(asks(method, { origin: 'https://elsewhere.example' })).toBe(true);
+  });
+
+  it.each(['POST', 'PUT', 'PATCH', 'DELETE', 'QUERY'])('%s needs our origin', (method) => {
+    expect(asks(method, { origin: PUBLIC })).toBe(true);
+    expect(asks(method, { origin: 'https://elsewhere.example' })).toBe(false);
+    expect(asks(method, { origin: 'http://echotide.example' })).toBe(false);
+    expect(asks(method, { origin: 'https://echotide.example:8443' })).toBe(false);
+    expect(asks(method, { origin: 'null' })).toBe(false);
+    expect(asks(method, {})).toBe(false);
+  });
+
+  it('takes the word of the browser when the origin is missing', () => {
+    expect(asks('POST', { 'sec-fetch-site': 'same-origin' })).toBe(true);
+    expect(asks('POST', { 'sec-fetch-site': 'same-site' })).toBe(false);
+    expect(asks('POST', { 'sec-fetch-site': 'none' })).toBe(false);
+    expect(
+      asks('POST', { origin: 'https://elsewhere.example', 'sec-fetch-site': 'same-origin' }),
+    ).toBe(false);
+  });
+
+  it('leaves the calculators open, and nothing beside them', () => {
+    for (const open of [paths.api.moon, paths.api.windows, paths.api.link]) {
+      expect(asks('POST', { origin: 'https://elsewhere.example' }, open)).toBe(true);
+      expect(asks('POST', {}, `${open}/more`)).toBe(false);
+    }
+    expect(asks('POST', {}, paths.api.skeds)).toBe(false);
+  });
+});

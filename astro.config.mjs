@@ -25,7 +25,8 @@ export default defineConfig({
       directives: [
         "default-src 'self'",
         "img-src 'self' data:",
-        "font-src 'self'",
+        // FullCalendar brings its few icons as a font in a data: address.
+        "font-src 'self' data:",
         "connect-src 'self'",
         "object-src 'none'",
         "base-uri 'self'",

@@ -34,6 +34,8 @@ process.on('SIGTERM', stop);
 process.on('SIGINT', stop);
 if (process.send) process.on('disconnect', stop);
 
+// It says where it listens even when told to be silent; `npm start` says so in its own words.
+console.info = () => undefined;
 try {
   await catcher.start();
   process.send?.({ ready: true });

@@ -50,7 +50,7 @@ await superviseUntilStopped(async (children) => {
   await ensureInstalled();
   const signIns = readSignIns();
   const first = !existsSync(path.join(dataDir, 'echotide.sqlite'));
-  const catcher = children.start('The mail catcher', ['mail-fake/main.mjs'], { env, quiet: true });
+  const catcher = children.start('The mail catcher', ['mail-fake/main.mjs'], { env });
   const prepare = step(first ? 'Making the data folder and the demo' : 'Checking the data', () =>
     children.start('Preparing the data', typescript('src/cli/prepare.ts', '--demo'), {
       env,

@@ -113,7 +113,7 @@ let current: Config | undefined;
 export function config(): Config {
   if (!current) {
     current = readConfig(process.env);
-    mkdirSync(current.dataDir, { recursive: true });
+    mkdirSync(current.dataDir, { recursive: true, mode: 0o700 });
   }
   return current;
 }

@@ -14,9 +14,10 @@ const J2000_MS = 946_728_000_000;
 const START_DAY = (SPAN.startMs - J2000_MS) / DAY_MS;
 
 const WARM_UP = 200;
-const ROUNDS = 9;
-const OURS_A_ROUND = 15;
-const SEARCHES_A_ROUND = 3;
+const ROUNDS = 7;
+/** Blocks of about the same length, so that a busy machine slows all three alike. */
+const OURS_A_BLOCK = 400;
+const SEARCHES_A_BLOCK = 30;
 
 const observers = pair.map(
   ({ site }) => new Observer(site.latitudeDeg, site.longitudeDeg, site.heightM),
@@ -59,6 +60,14 @@ function searchAltitude(): number {
   return events;
 }
 
+/** Mean milliseconds of a call in a block of calls. */
+function block(work: () => unknown, calls: number): number {
+  const tookMs = timed(() => {
+    for (let call = 0; call < calls; call += 1) work();
+  });
+  return tookMs / calls;
+}
+
 export const windowsPair30d: Bench = { name: 'windows.pair30d', run };
 
 function run(): BenchResult[] {
@@ -69,15 +78,15 @@ function run(): BenchResult[] {
   const minutes: number[] = [];
   const searches: number[] = [];
   for (let round = 0; round < ROUNDS; round += 1) {
-    own.push(median(Array.from({ length: OURS_A_ROUND }, () => timed(ours))));
-    minutes.push(timed(everyMinute));
-    searches.push(median(Array.from({ length: SEARCHES_A_ROUND }, () => timed(searchAltitude))));
+    own.push(block(ours, OURS_A_BLOCK));
+    minutes.push(block(everyMinute, 1));
+    searches.push(block(searchAltitude, SEARCHES_A_BLOCK));
   }
   const ownMs = median(own);
   const minutesMs = median(minutes);
   const searchesMs = median(searches);
   const note = (peerMs: number) =>
-    `medians of ${ROUNDS} alternating rounds: ${ownMs.toFixed(2)} ms with every sky limit and the ephemeris, peer ${peerMs.toFixed(1)} ms`;
+    `medians of ${ROUNDS} alternating blocks: ${ownMs.toFixed(2)} ms with every sky limit and the ephemeris, peer ${peerMs.toFixed(1)} ms`;
   return [
     {
       name: 'windows.pair30d.ratioPerMinute',

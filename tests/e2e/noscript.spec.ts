@@ -1,4 +1,5 @@
-import { linkIn, mailsTo, waitForMail } from './support/mails';
+import { addStation, offerSked } from './support/byApi';
+import { calendarIn, linkIn, mailsTo, waitForMail } from './support/mails';
 import { PASSWORD, register, signIn } from './support/people';
 import { expect, test } from './support/test';
 
@@ -34,6 +35,35 @@ test('signs in by a mailed link that looking at it does not spend', async ({ emp
   await page.context().clearCookies();
   await page.goto(link);
   await expect(page.getByRole('heading', { level: 1 })).toHaveText('This link was used already');
+});
+
+test('answers an offer from its mail without JavaScript', async ({ empty, browser }) => {
+  const ines = { name: 'Ines', email: 'ines@qn4noj.example', timeZone: 'Europe/Madrid' };
+  const jari = { name: 'Jari', email: 'jari@qn5noj.example', timeZone: 'Europe/Helsinki' };
+  const [first, second] = await Promise.all(
+    [ines, jari].map(async (who) => {
+      const context = await browser.newContext({ javaScriptEnabled: false });
+      const page = await context.newPage();
+      await register(page, empty, who);
+      return page;
+    }),
+  );
+  const from = await addStation(first!, empty, { callSign: 'QN4NOJ', locator: 'IN80' });
+  const to = await addStation(second!, empty, { callSign: 'QN5NOJ', locator: 'KP20' });
+  await offerSked(first!, empty, from, to);
+
+  const offer = await waitForMail(empty, jari.email, /QN4NOJ offers a sked/);
+  const link = linkIn(empty, offer, /\/skeds\//);
+  expect((await fetch(link, { method: 'HEAD', redirect: 'manual' })).status).toBeLessThan(400);
+  await second!.goto(link);
+  await second!.getByRole('button', { name: /^Accept / }).click();
+  await expect(second!.getByText(/^Agreed\./)).toBeVisible();
+  for (const { email } of [ines, jari]) {
+    const mail = await waitForMail(empty, email, /agreed/i);
+    expect(calendarIn(mail)).toMatchObject({ method: 'REQUEST', mimeMethod: 'REQUEST' });
+  }
+  await first!.context().close();
+  await second!.context().close();
 });
 
 test('keeps what was typed and says what is wrong, without telling whom it knows', async ({

@@ -15,13 +15,12 @@ export class Children {
 
   /**
    * Starts a Node.js process and resolves when it reports that it is ready.
-   * With `once` the process ends by itself after its work; with `quiet` what it says is not shown, only
-   * its errors. Throws `Problem` when it cannot start.
+   * With `once` the process ends by itself after its work. Throws `Problem` when it cannot start.
    */
-  start(name, args, { env = process.env, once = false, waitForReport = true, quiet = false } = {}) {
+  start(name, args, { env = process.env, once = false, waitForReport = true } = {}) {
     const child = spawn(process.execPath, args, {
       env,
-      stdio: ['ignore', quiet ? 'ignore' : 'inherit', 'inherit', 'ipc'],
+      stdio: ['ignore', 'inherit', 'inherit', 'ipc'],
     });
     const ended = new Promise((resolve) => child.once('exit', resolve));
     this.#running.set(name, { child, ended });

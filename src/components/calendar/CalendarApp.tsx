@@ -85,6 +85,14 @@ function Calendar({ timeZone, nowMs, grounds }: Props) {
     setChosen({ sked, wished: { startMs: whole(start), endMs: whole(end) } });
   };
 
+  const close = (skedId: string) => {
+    setChosen(null);
+    // The dialog leaves the page with its content, so that the browser cannot give the focus back by itself.
+    requestAnimationFrame(() =>
+      document.querySelector<HTMLElement>(`[data-sked-id="${CSS.escape(skedId)}"]`)?.focus(),
+    );
+  };
+
   return (
     <div className="stack">
       <div className="flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
@@ -203,6 +211,7 @@ function Calendar({ timeZone, nowMs, grounds }: Props) {
           eventDidMount={({ el, event }) => {
             const sked = skeds.get(event.id);
             if (!sked) return;
+            el.dataset['skedId'] = sked.id;
             el.setAttribute('role', 'button');
             el.setAttribute('aria-label', labelOf(sked, zone));
           }}
@@ -232,9 +241,9 @@ function Calendar({ timeZone, nowMs, grounds }: Props) {
           sked={chosen.sked}
           wished={chosen.wished}
           nowMs={nowMs}
-          onClose={() => setChosen(null)}
+          onClose={() => close(chosen.sked.id)}
           onMoved={(sentence) => {
-            setChosen(null);
+            close(chosen.sked.id);
             setToast(sentence);
             void queries.invalidateQueries({ queryKey: ['calendar'] });
           }}

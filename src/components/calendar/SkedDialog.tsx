@@ -140,7 +140,7 @@ function MoveFieldsForm({
         </p>
       ) : null}
       {refused ? (
-        <div className="notice notice--problem" role="alert">
+        <div className="notice notice--problem stack" role="alert">
           <p>{refused.message}</p>
           {refused.alternatives.length > 0 ? (
             <>

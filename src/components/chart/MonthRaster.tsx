@@ -210,6 +210,12 @@ function Marks({ frame, taken = [], ...props }: Props & { frame: RasterFrame }) 
       ) : null}
       {slot ? (
         <path
+          className="taken__halo"
+          d={rectangles([slot], (frame.rowHeight - frame.bandHeight) / 2, frame.bandHeight)}
+        />
+      ) : null}
+      {slot ? (
+        <path
           className="raster__slot"
           d={rectangles([slot], (frame.rowHeight - frame.bandHeight) / 2, frame.bandHeight)}
         />

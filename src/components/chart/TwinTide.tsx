@@ -69,7 +69,9 @@ export function TwinTide(props: Props) {
   const bottom = twin
     ? TOP + 2 * TWIN_STRIP
     : TOP + stations.length * (strip + STRIP_GAP) - STRIP_GAP;
-  const height = bottom + 26;
+  const labelled = (props.taken ?? []).length > 0;
+  const hoursY = bottom + 20;
+  const height = hoursY + (labelled ? 24 : 6);
 
   const instantOf = (event: PointerEvent) => {
     const box = svg.current!.getBoundingClientRect();
@@ -151,13 +153,7 @@ export function TwinTide(props: Props) {
           </g>
         ))}
         {tideHours(frame, step).map((hour) => (
-          <text
-            key={hour}
-            x={tideX(frame, hour)}
-            y={height - 6}
-            textAnchor="middle"
-            className="halo"
-          >
+          <text key={hour} x={tideX(frame, hour)} y={hoursY} textAnchor="middle" className="halo">
             {formatClock(hour).slice(0, 2)}
           </text>
         ))}
@@ -312,7 +308,7 @@ function Frame({
       {label ? (
         <text
           x={(x + tideX(frame, endMs)) / 2}
-          y={bottom + 14}
+          y={bottom + 32}
           textAnchor="middle"
           className="halo"
         >

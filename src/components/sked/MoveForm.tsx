@@ -53,7 +53,7 @@ export function MoveForm(props: Props) {
   };
   return (
     <div className="columns columns--even">
-      <form className="form" method="post" action={props.action} noValidate>
+      <form className="form content-start" method="post" action={props.action} noValidate>
         <input type="hidden" name="id" value={props.skedId} />
         <input type="hidden" name="version" value={props.version} />
         <input type="hidden" name="as" value={props.as} />

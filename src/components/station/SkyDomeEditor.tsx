@@ -71,9 +71,9 @@ export function SkyDomeEditor(props: Props) {
     onPointerMove: (event: PointerEvent<SVGSVGElement>) => {
       if (corners) setCorners({ start: corners.start, end: directionOf(event) });
     },
-    onPointerUp: () => {
+    onPointerUp: (event: PointerEvent<SVGSVGElement>) => {
       if (!corners) return;
-      onDraw(sectorBetween(corners.start, corners.end));
+      onDraw(sectorBetween(corners.start, directionOf(event)));
       setCorners(null);
     },
     onPointerCancel: () => setCorners(null),

@@ -149,5 +149,5 @@ function readySky(sky: SkyLimits): SkyLimits {
   const given = Object.entries({ ...sky, horizon }).filter(
     ([, value]) => value !== undefined && !(Array.isArray(value) && value.length === 0),
   );
-  return given.length === 0 ? { elevationFromDeg: 0 } : (Object.fromEntries(given) as SkyLimits);
+  return given.length === 0 ? { elevationFromDeg: 0 } : Object.fromEntries(given);
 }

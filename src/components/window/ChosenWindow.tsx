@@ -1,3 +1,4 @@
+import { useQueryClient } from '@tanstack/react-query';
 import { memo, useState } from 'react';
 import { paths } from '../../paths';
 import type { Answer } from './answer';
@@ -31,6 +32,7 @@ export const ChosenWindow = memo(function ChosenWindow({
   nowMs,
 }: Props) {
   const [offered, setOffered] = useState<Offered | null>(null);
+  const queries = useQueryClient();
   const { choice, window } = chosen;
   return (
     <WindowDetail
@@ -49,7 +51,10 @@ export const ChosenWindow = memo(function ChosenWindow({
         signedIn={signedIn}
         signInHref={signInHref}
         nowMs={nowMs}
-        onOffered={setOffered}
+        onOffered={(sked) => {
+          setOffered(sked);
+          void queries.invalidateQueries({ queryKey: ['searchData'] });
+        }}
       />
       {offered ? (
         <div className="notice" role="status">

@@ -21,7 +21,7 @@ export function ElevationPick({ station, asked, onChange }: Props) {
   const id = `lowest-${station.callSign}`;
   return (
     <ValuePick
-      label={`Lowest elevation at ${station.callSign}: ${formatNumber(lowest, lowest % 1 === 0 ? 0 : 1)} degrees`}
+      label={`Lowest elevation at ${station.callSign}`}
       value={`${formatNumber(lowest, lowest % 1 === 0 ? 0 : 1)}°`}
       beside={station.callSign}
     >

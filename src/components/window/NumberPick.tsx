@@ -22,7 +22,7 @@ export function NumberPick({ label, unit, value, least, most, step, note, onChan
   const id = label.replaceAll(' ', '-');
   const shown = `${formatNumber(value, decimals)}${unit === '°' ? '' : ' '}${unit}`;
   return (
-    <ValuePick label={`${label}: ${shown}`} value={shown}>
+    <ValuePick label={label} value={shown}>
       {() => (
         <>
           <label className="field__label" htmlFor={id}>

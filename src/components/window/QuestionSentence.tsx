@@ -213,7 +213,7 @@ function DatesPick({
 }) {
   return (
     <ValuePick
-      label={`Dates: ${question.days} days from ${formatDay(question.fromMs)}`}
+      label="Dates"
       value={`${question.days} days`}
       beside={`from ${formatDay(question.fromMs).replace(/^\S+ /, '')}`}
     >

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useDeferredValue, useId, useState } from 'react';
+import { useDeferredValue, useEffect, useId, useRef, useState } from 'react';
 import { isLocator, normalizeLocator } from '../../domain/locator/locator';
 import type { PublicStationPage } from '../../domain/station/views';
 import type { ChosenStation, StationChoice } from '../../domain/window/searchData';
@@ -25,12 +25,7 @@ export function StationPick({ station, label, own, chosen, onChoose, onRemove }:
     ? (station.placeName ?? (station.callSign === station.locator ? null : station.locator))
     : null;
   return (
-    <ValuePick
-      label={station ? `${label}: ${station.callSign}` : label}
-      value={station?.callSign ?? label}
-      beside={place}
-      plain={!station}
-    >
+    <ValuePick label={label} value={station?.callSign ?? label} beside={place} plain={!station}>
       {(close) => (
         <StationPanel
           own={own}
@@ -53,8 +48,10 @@ interface PanelProps extends Pick<Props, 'own' | 'chosen' | 'onChoose' | 'onRemo
 
 function StationPanel({ own, chosen, onChoose, onRemove, callSign }: PanelProps) {
   const id = useId();
+  const field = useRef<HTMLInputElement>(null);
   const [text, setText] = useState('');
   const search = useDeferredValue(text.trim());
+  useEffect(() => field.current?.focus(), []);
   const query = useQuery({
     queryKey: ['stations', search],
     queryFn: () =>
@@ -82,7 +79,7 @@ function StationPanel({ own, chosen, onChoose, onRemove, callSign }: PanelProps)
         id={`${id}-search`}
         label="Call sign, name or locator"
         value={text}
-        autoFocus
+        ref={field}
         autoComplete="off"
         spellCheck={false}
         maxLength={60}

@@ -2,7 +2,7 @@ import { useEffect, useId, useRef, useState, type ReactNode } from 'react';
 import { Icon } from '../ui/Icon';
 
 interface ValuePickProps {
-  /** What the value is, for screen readers: "Lowest elevation at QA1LUN". */
+  /** What the value is, said before it to screen readers: "Lowest elevation at QA1LUN". */
   label: string;
   value: ReactNode;
   /** Quiet words after the value. */
@@ -17,39 +17,38 @@ export function ValuePick({ label, value, beside, plain = false, children }: Val
   const root = useRef<HTMLSpanElement>(null);
   const button = useRef<HTMLButtonElement>(null);
   const panelId = useId();
+  const close = () => {
+    setOpen(false);
+    button.current?.focus();
+  };
   useEffect(() => {
     if (!open) return;
     const outside = (event: PointerEvent) => {
       if (!root.current?.contains(event.target as Node)) setOpen(false);
     };
+    const escape = (event: KeyboardEvent) => {
+      if (event.key !== 'Escape') return;
+      setOpen(false);
+      button.current?.focus();
+    };
     document.addEventListener('pointerdown', outside);
-    return () => document.removeEventListener('pointerdown', outside);
+    document.addEventListener('keydown', escape);
+    return () => {
+      document.removeEventListener('pointerdown', outside);
+      document.removeEventListener('keydown', escape);
+    };
   }, [open]);
-  const close = () => {
-    setOpen(false);
-    button.current?.focus();
-  };
   return (
-    <span
-      ref={root}
-      className="pick"
-      onKeyDown={(event) => {
-        if (event.key === 'Escape' && open) {
-          event.stopPropagation();
-          close();
-        }
-      }}
-    >
+    <span ref={root} className="pick">
       <button
         ref={button}
         type="button"
         className={plain ? 'pick__plain' : 'pick__value'}
         aria-expanded={open}
         aria-controls={open ? panelId : undefined}
-        aria-label={plain ? undefined : label}
         onClick={() => setOpen(!open)}
       >
-        {plain ? <Icon name="plus" /> : null}
+        {plain ? <Icon name="plus" /> : <span className="sr-only">{label}: </span>}
         <span>{value}</span>
         {beside ? <span className="pick__beside">{beside}</span> : null}
       </button>

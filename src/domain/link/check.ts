@@ -54,7 +54,7 @@ export function checkFrequency(frequencyMhz: number, path = 'frequencyMhz'): voi
 
 export function checkMode(id: string, path = 'mode'): ModeFigures {
   const mode = modeFigures(id);
-  if (!mode) throw new LinkInputError(path, `No mode is called “${String(id)}”.`);
+  if (!mode) throw new LinkInputError(path, `No mode is called “${id}”.`);
   return mode;
 }
 

@@ -1,5 +1,5 @@
 import type { Site } from '../sky/limits';
-import type { Antenna, BandSetup, Polarization, ReceiveChain } from '../station/setup';
+import type { Antenna, Polarization, ReceiveChain } from '../station/setup';
 
 /** A receive chain as stored, or the bare receiver noise at the feed's flange without sky, ground and Moon. */
 export type LinkReceive =
@@ -21,9 +21,4 @@ export interface LinkStation {
   callSign?: string | undefined;
   site: Site;
   setup: LinkSetup;
-}
-
-/** The stored shape must stay usable as it is. */
-export function linkSetupOf(setup: BandSetup): LinkSetup {
-  return setup;
 }

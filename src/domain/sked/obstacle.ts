@@ -34,7 +34,7 @@ export function slotObstacle(stations: readonly SkedStation[], slot: Interval): 
     const sky = compileSky(station.sky);
     return {
       callSign: station.callSign,
-      causeAt(timeMs: number): SkyCause | null {
+      causeAt: (timeMs: number): SkyCause | null => {
         table.moonEarthFixed(timeMs, moon);
         const angles = lookAngles(observer, [moon[0]!, moon[1]!, moon[2]!]);
         return compiledSkyCause(sky, angles.azimuthDeg, angles.elevationDeg);

@@ -3,6 +3,7 @@ import { degradationModel } from '../link/degradation';
 import { HOUR_MS, MINUTE_MS, type Interval } from '../time/interval';
 import { WindowCache } from './cache';
 import { DegradationTrack, degradationTimeline } from './degradationTimeline';
+import { cutByLimit, type InnerLimit } from './innerLimit';
 import { highestLowerMoment, leastDegradationMoment, stationSummary } from './moments';
 import { sunTimeline } from './sunTimeline';
 import { sweepTimelines, type Stretch } from './sweep';
@@ -26,15 +27,17 @@ const TOO_SHORT: LimitCause = { callSign: null, reason: 'tooShort' };
  * fails in `REASON_ORDER`; lost and window hours together are the whole search, to the millisecond.
  *
  * @param cache keeps Moon tables and station timelines between calls; hand in the same one while limits change.
+ * @param inner further limits, asked only where all others are satisfied.
  */
 export function findCommonWindows(
   search: WindowSearch,
   cache: WindowCache = new WindowCache(),
+  inner: readonly InnerLimit[] = [],
 ): WindowResult {
   const span = searchSpan(search);
   const tracks = search.stations.map((station) => cache.track(span, station.site));
   const degradation = degradationTrack(search, span, cache);
-  const stretches = sweepSearch(search, tracks, degradation, cache);
+  const stretches = inner.reduce(cutByLimit, sweepSearch(search, tracks, degradation, cache));
   const minimumMs = (search.minimumMinutes ?? 1) * MINUTE_MS;
   const windows: CommonWindow[] = [];
   stretches.forEach((stretch, index) => {

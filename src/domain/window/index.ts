@@ -6,6 +6,7 @@ export {
   visibleIntervals,
   type CommonUp,
 } from './findCommonWindows';
+export type { InnerLimit } from './innerLimit';
 export { stationTimeline } from './stationTimeline';
 export { REASON_ORDER, sweepTimelines, type Stretch } from './sweep';
 export { freeIntervals, timelineOfIntervals, type Timeline } from './timeline';

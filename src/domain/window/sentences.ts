@@ -110,21 +110,25 @@ const LEAST_GAP_DAYS = 4;
 
 /** "From 26 Jan to 5 Feb no hour fits: …", about the longest run of days without a window; null when there is none. */
 export function gapSentence(layers: WindowLayers): string | null {
-  let longest: [from: number, to: number] | null = null;
-  let from = -1;
-  layers.days.forEach((day, index) => {
-    if (day.usableMs > 0) from = -1;
-    else if (from < 0) from = index;
-    if (from >= 0 && (!longest || index - from > longest[1] - longest[0])) longest = [from, index];
-  });
-  if (!longest) return null;
-  const [first, last]: [number, number] = longest;
-  if (last - first + 1 < LEAST_GAP_DAYS || last - first + 1 === layers.days.length) return null;
+  const [first, last] = longestEmptyRun(layers.days);
+  const days = last - first + 1;
+  if (days < LEAST_GAP_DAYS || days === layers.days.length) return null;
   const gap = {
     startMs: layers.days[first]!.startMs,
     endMs: layers.days[last]!.startMs + DAY_MS,
   };
   return `From ${shortDay(gap.startMs)} to ${shortDay(layers.days[last]!.startMs)} no hour fits: ${gapReason(layers, gap)}.`;
+}
+
+/** First and last index of the longest run of days without a window; without any, a run of length 0. */
+function longestEmptyRun(days: WindowLayers['days']): [first: number, last: number] {
+  let longest: [number, number] = [0, -1];
+  let from = 0;
+  days.forEach((day, index) => {
+    if (day.usableMs > 0) from = index + 1;
+    else if (index - from > longest[1] - longest[0]) longest = [from, index];
+  });
+  return longest;
 }
 
 function gapReason(layers: WindowLayers, gap: Interval): string {

@@ -1,5 +1,5 @@
 import type { APIContext } from 'astro';
-import { z } from 'zod';
+import type { z } from 'zod';
 import {
   AppError,
   BodyTooLarge,

@@ -23,6 +23,9 @@ export function createWebServer(
     response.setHeader('x-content-type-options', 'nosniff');
     keepForwardingHonest(request, options.trustProxy);
     logWhenDone(request, response, id);
+    response.once('finish', () => {
+      cutUnreadBody(request);
+    });
     if (limitBody(request, response, options.maxBodyBytes)) application(request, response);
   });
   server.headersTimeout = 15_000;
@@ -67,7 +70,7 @@ function keepForwardingHonest(request: IncomingMessage, trustProxy: boolean): vo
 function limitBody(request: IncomingMessage, response: ServerResponse, maxBytes: number): boolean {
   if (Number(request.headers['content-length'] ?? 0) > maxBytes) {
     request.resume();
-    refuse(request, response, maxBytes);
+    refuse(response, maxBytes);
     return false;
   }
   // Reading the stream here would take it away from the application, so count what the parser puts in.
@@ -76,13 +79,13 @@ function limitBody(request: IncomingMessage, response: ServerResponse, maxBytes:
   request.push = (chunk: unknown, encoding?: BufferEncoding) => {
     size += chunk instanceof Uint8Array ? chunk.byteLength : 0;
     if (size <= maxBytes) return push(chunk, encoding);
-    if (!response.writableEnded) refuse(request, response, maxBytes);
+    if (!response.writableEnded) refuse(response, maxBytes);
     return true;
   };
   return true;
 }
 
-function refuse(request: IncomingMessage, response: ServerResponse, maxBytes: number): void {
+function refuse(response: ServerResponse, maxBytes: number): void {
   const message = `The request is larger than ${Math.floor(maxBytes / 1e6)} MB, the most that is read here.`;
   const body = JSON.stringify({ error: { code: 'bodyTooLarge', message, fields: [] } });
   if (!response.headersSent) {
@@ -93,15 +96,22 @@ function refuse(request: IncomingMessage, response: ServerResponse, maxBytes: nu
       connection: 'close',
     });
   }
-  // The client may still be sending: give it a moment to read the answer before the line is cut. An
-  // application that waits for the rest of the body is told that it will not come.
-  response.end(body, () => {
-    setTimeout(() => request.destroy(new Error(message)), 500).unref();
-  });
+  response.end(body);
   // The application may answer to the broken body; that answer has nowhere to go.
   response.writeHead = () => response;
   response.write = () => true;
   response.end = () => response;
+}
+
+/**
+ * An answer is out and the client is still sending: give it a moment to read the answer, then cut the
+ * line. An application that waits for the rest of the body is told that it will not come.
+ */
+function cutUnreadBody(request: IncomingMessage): void {
+  if (request.complete) return;
+  setTimeout(() => {
+    if (!request.complete) request.destroy(new Error('The rest of the body was not wanted.'));
+  }, 500).unref();
 }
 
 function logWhenDone(request: IncomingMessage, response: ServerResponse, requestId: string): void {

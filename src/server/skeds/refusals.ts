@@ -1,5 +1,5 @@
 import type { Refusal } from '../../domain/sked/machine';
-import { AppError, Conflict, InvalidInput, NotFound } from '../errors';
+import { Conflict, InvalidInput, NotFound, type AppError } from '../errors';
 
 /** The slot cannot be had; caught by the use case, which adds alternatives. Never leaves src/server/skeds. */
 export class SlotTaken extends Error {}

@@ -1,6 +1,5 @@
 import { cutLocator, locatorToPosition } from '../../domain/locator/locator';
 import type { BandEquipment } from '../../domain/station/views';
-import type { PublicLocatorLength } from '../../domain/station/schema';
 import type { Interval } from '../../domain/time/interval';
 import { expandUsableHours } from '../../domain/time/weeklyHours';
 import type { WindowStation } from '../../domain/window/types';
@@ -83,7 +82,7 @@ function siteFor(
   own: boolean,
   precision: 'server' | 'viewer',
 ): Pick<SearchStation, 'site' | 'locator'> {
-  const shown = cutLocator(row.locator, row.public_locator_length as PublicLocatorLength);
+  const shown = cutLocator(row.locator, row.public_locator_length);
   const locator = own ? row.locator : shown;
   if (own || precision === 'server') {
     return {

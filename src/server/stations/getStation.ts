@@ -1,6 +1,5 @@
 import { coarseSky } from '../../domain/station/coarseSky';
 import { cutLocator, locatorToPosition } from '../../domain/locator/locator';
-import type { PublicLocatorLength } from '../../domain/station/schema';
 import type { CrewStation, PublicStation } from '../../domain/station/views';
 import type { Viewer } from '../auth/viewer';
 import type { Services } from '../services';
@@ -36,7 +35,7 @@ export async function getPublicStation(
   const crewRole = viewer ? await crewRoleOf(services.db, stationId, viewer.id) : null;
   if (row.listed === 0 && !crewRole) throw stationNotFound();
   const equipment = await equipmentOf(services.db, [stationId]);
-  const locator = cutLocator(row.locator, row.public_locator_length as PublicLocatorLength);
+  const locator = cutLocator(row.locator, row.public_locator_length);
   return {
     station: {
       id: row.id,

@@ -71,8 +71,14 @@ export const windowsAnswerSchema = z.object({
         .object({
           time: instant,
           degradationDb: number.optional(),
-          marginDb: number.optional(),
-          chance: number.optional(),
+          marginDb: number
+            .describe(
+              'Least of all pairs and directions; given with frequencyMhz, mode and every setup.',
+            )
+            .optional(),
+          chance: number
+            .describe('Of a contact in a slot that begins then; the least of all pairs.')
+            .optional(),
         })
         .describe(
           'The moment of least degradation where a frequency is given, else of the greatest lower elevation.',
@@ -83,7 +89,7 @@ export const windowsAnswerSchema = z.object({
   lost: z
     .array(causeSchema.extend({ hours: number }))
     .describe(
-      'Every hour of the search that is in no window, by the first limit that forbids it; in this order: horizon, horizonProfile, elevationLimit, transmitElevation, azimuthLimit, blockedSector, sunSeparation, degradation, tooShort; within one reason the first call sign of the alphabet.',
+      'Every hour of the search that is in no window, by the first limit that forbids it; in this order: horizon, horizonProfile, elevationLimit, transmitElevation, azimuthLimit, blockedSector, sunSeparation, degradation, margin, tooShort; within one reason the first call sign of the alphabet.',
     ),
 });
 export type WindowsAnswer = z.output<typeof windowsAnswerSchema>;

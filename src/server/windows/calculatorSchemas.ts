@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { HIGHEST_FREQUENCY_MHZ, LOWEST_FREQUENCY_MHZ } from '../../domain/link/check';
+import type { SkyLimits } from '../../domain/sky';
 import { figure, record } from '../../domain/station/fields';
 import { MODE_IDS } from '../../domain/station/modes';
 import { DAY_MS } from '../../domain/time/interval';
@@ -28,6 +29,13 @@ export const frequencySchema = figure(
 );
 
 export const modeSchema = z.enum(MODE_IDS, `The mode must be one of ${MODE_IDS.join(', ')}.`);
+
+/** Limits counted once for every station and day: about two seconds of computing. */
+const MAX_STATION_DAY_LIMITS = 1_500_000;
+
+function limitsIn(sky: SkyLimits | undefined): number {
+  return 20 + (sky?.horizon?.length ?? 0) + 4 * (sky?.blocked?.length ?? 0);
+}
 
 /** A label, not only an issued call sign: portable and planned stations are searched for too. */
 export const callSignSchema = z
@@ -94,9 +102,21 @@ export const windowsRequestSchema = record(
     problem(['maximumDegradationDb'], 'Degradation depends on the band: give frequencyMhz too.');
   }
   if (search.minimumMarginDb !== undefined) {
+    const needed = 'A margin needs frequencyMhz, mode and the setup of every station';
+    if (search.frequencyMhz === undefined)
+      problem(['frequencyMhz'], `${needed}; frequencyMhz is missing.`);
+    if (search.mode === undefined) problem(['mode'], `${needed}; mode is missing.`);
+    search.stations.forEach(({ callSign, setup }, index) => {
+      if (setup) return;
+      problem(['stations', index, 'setup'], `${needed}; ${callSign} has none.`);
+    });
+  }
+  const days = (search.to - search.from) / DAY_MS;
+  const work = search.stations.reduce((sum, { sky }) => sum + days * limitsIn(sky), 0);
+  if (work > MAX_STATION_DAY_LIMITS) {
     const message =
-      'A search by margin is not available yet; leave minimumMarginDb out and limit the degradation instead.';
-    problem(['minimumMarginDb'], message);
+      'So many limits over so many days are too much for one request. Shorten the dates or simplify the skies.';
+    problem(['to'], message);
   }
   const known = new Set<string>();
   search.stations.forEach(({ callSign }, index) => {

@@ -12,6 +12,8 @@ interface Servers {
 
 export const test = base.extend<object, Servers>({
   demo: [
+    // Playwright reads from the pattern which fixtures are wanted: none.
+    // eslint-disable-next-line no-empty-pattern
     async ({}, use) => {
       const server = await startServer({ demo: true });
       await use(server);
@@ -20,6 +22,8 @@ export const test = base.extend<object, Servers>({
     { scope: 'worker', timeout: 60_000 },
   ],
   empty: [
+    // Playwright reads from the pattern which fixtures are wanted: none.
+    // eslint-disable-next-line no-empty-pattern
     async ({}, use) => {
       const server = await startServer({ demo: false });
       await use(server);

@@ -131,6 +131,25 @@ describe('drain', () => {
     expect(performance.now() - startedAt).toBeLessThan(2000);
   });
 
+  it('is not held up by a body that nobody reads', async () => {
+    const port = await serve((request, response) => {
+      request.once('readable', () => {
+        request.pause();
+        response.end('enough');
+      });
+      request.on('error', () => undefined);
+    });
+    const socket = net.connect(port, '127.0.0.1');
+    socket.on('error', () => undefined);
+    socket.write('POST / HTTP/1.1\r\nHost: x\r\nTransfer-Encoding: chunked\r\n\r\n64\r\n');
+    socket.write('x'.repeat(100));
+    await once(socket, 'data');
+    const startedAt = performance.now();
+    await drain(server!, 10_000);
+    expect(performance.now() - startedAt).toBeLessThan(3000);
+    socket.destroy();
+  });
+
   it('cuts what takes too long', async () => {
     const port = await serve(() => undefined);
     const stuck = fetch(`http://127.0.0.1:${port}/`);

@@ -80,7 +80,7 @@ describe('offer, move, accept, cancel', () => {
     const { id } = await offerFrom(world, A, [B], first, 'Clear sky forecast.');
     let mails = await world.mails();
     expect(mails.map((mail) => mail.recipient)).toEqual([as(B).email]);
-    expect(mails[0]!.subject).toMatch(/^QA1LUN offers a sked: \w{3} \d+ Jan .* UTC, 1296 MHz$/);
+    expect(mails[0]!.subject).toMatch(/^QA1LUN offers a sked, \w{3} \d+ Jan .* UTC, 1296 MHz$/);
     expect(mails[0]!.text_body).toContain('Clear sky forecast.');
     expect(mails[0]!.text_body).toMatch(/Your time: .*EST/);
     expect(mails[0]!.calendar_body).toBeNull();
@@ -155,7 +155,7 @@ describe('offer, move, accept, cancel', () => {
       expect(entry(mail)).toMatchObject({ method: 'CANCEL', sequence: 1, ...first });
       expect(mail.text_body).toContain('is given up');
     }
-    expect(fresh.map((mail) => mail.subject.split(':')[0]).sort()).toEqual([
+    expect(fresh.map((mail) => mail.subject.split(',')[0]).sort()).toEqual([
       'QA1LUN moved the sked',
       'You moved the sked',
     ]);
@@ -351,7 +351,7 @@ describe('ends', () => {
     let mails = await world.mails();
     await declineSked(world.services, as(B), declined.id, { version: 1, words: 'At work.' });
     let fresh = await newMails(mails);
-    expect(fresh.map((mail) => [mail.recipient, mail.subject.split(':')[0]])).toEqual([
+    expect(fresh.map((mail) => [mail.recipient, mail.subject.split(',')[0]])).toEqual([
       [as(A).email, 'QB7TID declined the sked'],
     ]);
     mails = await world.mails();

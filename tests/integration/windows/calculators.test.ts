@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { computeLink } from '../../../src/domain/link/budget';
 import { InvalidInput } from '../../../src/server/errors';
 import { openApiDocument } from '../../../src/server/http/openapi';
 import { checked } from '../../../src/server/http/respond';
@@ -101,8 +102,8 @@ describe('POST /api/v1/moon', () => {
 });
 
 describe('POST /api/v1/windows', () => {
-  it('accounts for every hour and keeps its own contract', () => {
-    const answer = windowsAnswerSchema.strict().parse(windows(SEARCH));
+  it('accounts for every hour and keeps its own contract', async () => {
+    const answer = windowsAnswerSchema.strict().parse(await windows(SEARCH));
     expect(answer.windows.length).toBeGreaterThan(4);
     const hours =
       answer.lost.reduce((sum, lost) => sum + lost.hours, 0) +
@@ -114,7 +115,7 @@ describe('POST /api/v1/windows', () => {
     ]);
   });
 
-  it('takes every limit of a sky', () => {
+  it('takes every limit of a sky', async () => {
     const sky = {
       elevationFromDeg: 5,
       elevationToDeg: 80,
@@ -130,7 +131,7 @@ describe('POST /api/v1/windows', () => {
       ],
       transmitElevationFromDeg: 7,
     };
-    const limited = windows({ ...SEARCH, stations: [{ ...A, sky }, B], frequencyMhz: 432 });
+    const limited = await windows({ ...SEARCH, stations: [{ ...A, sky }, B], frequencyMhz: 432 });
     const reasons = new Set(limited.lost.map(({ reason }) => reason));
     for (const reason of ['horizon', 'horizonProfile', 'azimuthLimit', 'blockedSector'] as const) {
       expect(reasons).toContain(reason);
@@ -138,17 +139,80 @@ describe('POST /api/v1/windows', () => {
     expect(limited.windows[0]!.best.degradationDb).toBeGreaterThan(0);
   });
 
-  it('takes a setup and a mode', () => {
-    const setup = {
-      antenna: { diameterM: 3 },
-      polarization: 'vertical',
-      powerAtFeedW: 200,
-      receive: { stages: [{ lossDb: 0.1 }, { gainDb: 30, noiseFigureDb: 0.3 }] },
-    };
-    const answer = windows({ ...SEARCH, stations: [{ ...A, setup }, B], mode: 'q65-60c' });
-    expect(answer.windows.length).toBeGreaterThan(4);
+  const setup = {
+    antenna: { diameterM: 3 },
+    polarization: 'rightCircular',
+    powerAtFeedW: 200,
+    receive: { stages: [{ lossDb: 0.1 }, { gainDb: 30, noiseFigureDb: 0.3 }] },
+  };
+  const EQUIPPED = {
+    ...SEARCH,
+    stations: [
+      { ...A, setup },
+      { ...B, setup },
+    ],
+    frequencyMhz: 1296,
+    mode: 'q65-60c',
+  };
+
+  it('tells margin and chance where every station told its setup', async () => {
+    const { windows: found } = await windows(EQUIPPED);
+    for (const { best } of found) {
+      expect(Math.abs(best.marginDb!)).toBeLessThan(40);
+      expect(best.chance).toBeGreaterThanOrEqual(0);
+      expect(best.chance).toBeLessThanOrEqual(1);
+    }
+    const alone = await windows({ ...EQUIPPED, stations: [EQUIPPED.stations[0], B] });
+    expect(alone.windows[0]!.best.marginDb).toBeUndefined();
   });
 
+  it('limits the margin: it holds inside and is met at the edges that it makes', async () => {
+    const plain = await windows(EQUIPPED);
+    const margins = plain.windows.map(({ best }) => best.marginDb!).sort((a, b) => a - b);
+    const minimumMarginDb = margins[margins.length >> 1]!;
+    const limited = await windows({ ...EQUIPPED, minimumMarginDb });
+    const hours = (answer: typeof limited) =>
+      answer.windows.reduce((sum, { minutes }) => sum + minutes / 60, 0);
+    expect(limited.windows.length).toBeGreaterThan(0);
+    expect(hours(limited)).toBeLessThan(hours(plain));
+    const lost = limited.lost.reduce((sum, one) => sum + one.hours, 0);
+    expect(hours(limited) + lost).toBeCloseTo(7 * 24, 4);
+    expect(limited.lost.find(({ reason }) => reason === 'margin')!.callSign).toBeNull();
+    const [first, second] = checked(windowsRequestSchema, EQUIPPED).stations;
+    const marginAt = (timeMs: number) => {
+      const link = computeLink({
+        stations: [
+          { site: first!.site, setup: first!.setup! },
+          { site: second!.site, setup: second!.setup! },
+        ],
+        frequencyMhz: EQUIPPED.frequencyMhz,
+        mode: EQUIPPED.mode,
+        timeMs,
+      });
+      return Math.min(...link.directions.map(({ marginDb }) => marginDb));
+    };
+    let edges = 0;
+    for (const { start, end, opens } of limited.windows) {
+      const [startMs, endMs] = [Date.parse(start), Date.parse(end)];
+      for (const share of [0, 0.3, 0.6, 1]) {
+        const timeMs = startMs + (endMs - startMs) * share;
+        expect(marginAt(timeMs)).toBeGreaterThan(minimumMarginDb - 0.01);
+      }
+      if (opens.reason !== 'margin') continue;
+      edges += 1;
+      expect(Math.abs(marginAt(startMs) - minimumMarginDb)).toBeLessThan(0.01);
+    }
+    expect(edges).toBeGreaterThan(0);
+  });
+
+  const rough = {
+    horizon: Array.from({ length: 700 }, (_, n) => ({ azimuthDeg: n / 2, elevationDeg: n % 9 })),
+  };
+  const tooMuch = {
+    ...SEARCH,
+    to: '2028-01-31T00:00:00Z',
+    stations: Array.from({ length: 16 }, (_, n) => ({ ...B, callSign: `Q${n}A`, sky: rough })),
+  };
   const withSky = (sky: unknown) => ({ ...SEARCH, stations: [{ ...A, sky }, B] });
   const point = (azimuthDeg: number, elevationDeg: number) => ({ azimuthDeg, elevationDeg });
 
@@ -186,7 +250,8 @@ describe('POST /api/v1/windows', () => {
       { ...SEARCH, maximumDegradationDb: 3 },
       'maximumDegradationDb',
     ],
-    ['a search by margin', { ...SEARCH, minimumMarginDb: 3 }, 'minimumMarginDb'],
+    ['a margin without setups', { ...SEARCH, minimumMarginDb: 3 }, 'stations.0.setup'],
+    ['more limits than one request may ask', tooMuch, 'to'],
     ['an unknown mode', { ...SEARCH, mode: 'semaphore' }, 'mode'],
     [
       'azimuth from = to',
@@ -216,7 +281,7 @@ describe('POST /api/v1/windows', () => {
       'stations.0.setup.antenna',
     ],
   ])('refuses %s with a sentence', (_name, request, path) => {
-    const fields = refusal(() => windows(request));
+    const fields = refusal(() => checked(windowsRequestSchema, request));
     expect(fields.map((field) => field.path)).toContain(path);
     for (const { message } of fields) expect(message).toMatch(/^[A-Z].+\.$/);
   });

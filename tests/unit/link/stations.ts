@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import type { LinkSetup, LinkStation } from '~/domain/link/setup';
-import type { Polarization } from '~/domain/station/setup';
+import type { BandSetup, Polarization } from '~/domain/station/setup';
 
 export const SETUP: LinkSetup = {
   antenna: { kind: 'dish', diameterM: 3, apertureEfficiency: 0.55 },
@@ -89,3 +89,6 @@ export const anySetup: fc.Arbitrary<LinkSetup> = fc.record({
 export const anyStation: fc.Arbitrary<LinkStation> = fc.record({ site: anySite, setup: anySetup });
 
 export const anyTimeMs = fc.integer({ min: Date.UTC(2026, 0, 1), max: Date.UTC(2035, 0, 1) });
+
+/** The stored equipment of a band must stay usable as it is: a change that breaks this does not compile. */
+export const setupOfStored = (stored: BandSetup): LinkSetup => stored;

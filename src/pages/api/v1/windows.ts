@@ -7,5 +7,5 @@ import { searchWindows } from '../../../server/windows/searchWindows';
 export const POST = endpoint(async (context) => {
   openToAll(context);
   await limitCalculator(context);
-  return json(searchWindows(await readJson(context.request, windowsRequestSchema)));
+  return json(await searchWindows(await readJson(context.request, windowsRequestSchema)));
 });

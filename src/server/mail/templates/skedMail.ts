@@ -35,7 +35,7 @@ export function skedMail(
   const { facts, words, by } = news;
   const { title, paragraphs, button } = told(news, yourCallSigns);
   return {
-    subject: `${title}: ${formatUtcRange(facts)}, ${facts.bandLabel}`,
+    subject: `${title}, ${formatUtcRange(facts)}, ${facts.bandLabel}`,
     content: {
       title,
       paragraphs,

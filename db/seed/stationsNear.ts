@@ -52,7 +52,7 @@ export const STATIONS_NEAR: DemoStation[] = [
       ],
       transmitElevationFromDeg: 10,
     },
-    weekly: workingLife(['17:30', '00:30'], ['09:00', '01:00'], ['05:30', '07:15']),
+    weekly: workingLife(['16:30', '00:30'], ['07:30', '01:30'], ['05:30', '08:30']),
     daysOffAhead: [9, 10],
     bands: {
       '432': setup(
@@ -101,7 +101,7 @@ export const STATIONS_NEAR: DemoStation[] = [
         },
       ],
     },
-    weekly: workingLife(['16:00', '23:00'], ['07:00', '23:30']),
+    weekly: workingLife(['15:00', '23:30'], ['06:00', '00:30'], ['05:00', '06:30']),
     daysOffAhead: [13],
     bands: {
       '144': setup(array(17.2, 22), 'horizontal', 900, measured(290)),

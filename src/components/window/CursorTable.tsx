@@ -30,7 +30,14 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality }
   return (
     <>
       {stations.length > 3 ? (
-        <div className="table-scroll">
+        <div
+          className="table-scroll"
+          role="region"
+          aria-label="Figures at the hand"
+          // Wider than a phone: it must be possible to scroll it by keys.
+          // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
+          tabIndex={0}
+        >
           <table className="figures table">
             <thead>
               <tr>

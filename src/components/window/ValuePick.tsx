@@ -11,9 +11,13 @@ interface ValuePickProps {
   children: (close: () => void) => ReactNode;
 }
 
+/** Widest a panel gets, with its margin; near the right edge it opens to the left. */
+const PANEL_WIDTH = 372;
+
 /** A value of the sentence that opens a panel beneath it. The page stays usable while the panel is open. */
 export function ValuePick({ label, value, beside, plain = false, children }: ValuePickProps) {
   const [open, setOpen] = useState(false);
+  const [toLeft, setToLeft] = useState(false);
   const root = useRef<HTMLSpanElement>(null);
   const button = useRef<HTMLButtonElement>(null);
   const panelId = useId();
@@ -46,14 +50,23 @@ export function ValuePick({ label, value, beside, plain = false, children }: Val
         className={plain ? 'pick__plain' : 'pick__value'}
         aria-expanded={open}
         aria-controls={open ? panelId : undefined}
-        onClick={() => setOpen(!open)}
+        onClick={(event) => {
+          const { left } = event.currentTarget.getBoundingClientRect();
+          setToLeft(left + PANEL_WIDTH > document.documentElement.clientWidth);
+          setOpen(!open);
+        }}
       >
         {plain ? <Icon name="plus" /> : <span className="sr-only">{label}: </span>}
         <span>{value}</span>
         {beside ? <span className="pick__beside">{beside}</span> : null}
       </button>
       {open ? (
-        <div id={panelId} className="pick__panel" role="group" aria-label={label}>
+        <div
+          id={panelId}
+          className={toLeft ? 'pick__panel pick__panel--left' : 'pick__panel'}
+          role="group"
+          aria-label={label}
+        >
           {children(close)}
         </div>
       ) : null}

@@ -29,7 +29,7 @@ interface Props {
 }
 
 const queryClient = new QueryClient();
-const NARROW = 600;
+const NARROW = 520;
 
 /** The windows page: a question, the month that answers it, and one window of it in full. */
 export default function WindowsApp(props: Props) {

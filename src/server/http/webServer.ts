@@ -93,7 +93,6 @@ function refuse(response: ServerResponse, maxBytes: number): void {
       'content-type': 'application/json; charset=utf-8',
       'content-length': Buffer.byteLength(body),
       'cache-control': 'no-store',
-      connection: 'close',
     });
   }
   response.end(body);
@@ -103,15 +102,19 @@ function refuse(response: ServerResponse, maxBytes: number): void {
   response.end = () => response;
 }
 
+/** How long a client that has its answer may go on sending. */
+const LINGER_MS = 2000;
+
 /**
- * An answer is out and the client is still sending: give it a moment to read the answer, then cut the
- * line. An application that waits for the rest of the body is told that it will not come.
+ * An answer is out and the client is still sending. What comes is thrown away, because a line that is cut at
+ * once takes the answer with it; after a while it is cut all the same. An application that waits for the rest
+ * of the body is told that it will not come.
  */
 function cutUnreadBody(request: IncomingMessage): void {
   if (request.complete) return;
   setTimeout(() => {
     if (!request.complete) request.destroy(new Error('The rest of the body was not wanted.'));
-  }, 500).unref();
+  }, LINGER_MS).unref();
 }
 
 function logWhenDone(request: IncomingMessage, response: ServerResponse, requestId: string): void {

@@ -1,17 +1,36 @@
-import { pageAs } from './support/people';
+import { addStation } from './support/byApi';
+import { register } from './support/people';
 import { expect, test } from './support/test';
 
+const CHAIN = [
+  { kind: 'loss', name: 'Relay', lossDb: 0.1 },
+  { kind: 'amplifier', name: 'Feed amplifier', gainDb: 30, noiseFigureDb: 0.3 },
+  { kind: 'loss', name: 'Cable', lossDb: 4 },
+  { kind: 'amplifier', name: 'Receiver', gainDb: 0, noiseFigureDb: 6 },
+];
+
 test('a chain is reordered by keys, measured, and the newest record goes into the budget', async ({
-  browser,
-  server,
+  page,
+  empty: server,
 }) => {
-  const page = await pageAs(browser, server, 'Ylva');
-  await page.goto(`${server.url}/stations`);
-  await page
-    .getByRole('link', { name: /QA1LUN/ })
-    .first()
-    .click();
-  await page.getByRole('link', { name: 'Equipment' }).click();
+  await register(page, server, {
+    name: 'Runa',
+    email: 'runa@chain.example',
+    timeZone: 'Europe/Stockholm',
+  });
+  const { id } = await addStation(page, server, { callSign: 'QR1UNA', locator: 'JO97ee' });
+  const setup = {
+    antenna: { kind: 'dish', diameterM: 3, apertureEfficiency: 0.55 },
+    polarization: 'rightCircular',
+    powerAtFeedW: 200,
+    receive: { kind: 'stages', stages: CHAIN },
+  };
+  const equipped = await page.request.put(`${server.url}/api/v1/stations/${id}/equipment`, {
+    headers: { origin: server.url },
+    data: { version: 1, equipment: [{ band: '1296', setup }] },
+  });
+  expect(equipped.status()).toBe(200);
+  await page.goto(`${server.url}/stations/${id}/equipment`);
   const band = page.getByRole('region', { name: '1296 MHz', exact: true });
   const names = () =>
     band
@@ -43,5 +62,4 @@ test('a chain is reordered by keys, measured, and the newest record goes into th
   await expect(noise.getByRole('row').nth(1)).toContainText('in use');
   await page.reload();
   await expect(band).toContainText('49.5 K, measured on');
-  await page.context().close();
 });

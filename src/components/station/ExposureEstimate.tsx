@@ -50,10 +50,8 @@ export function ExposureEstimate({ band, antenna, powerAtFeedW }: Props) {
         })
       : null;
   return (
-    <section className="stack" id={`exposure-${band}`} aria-labelledby={`exposure-${band}-title`}>
-      <h3 id={`exposure-${band}-title`} className="font-semibold">
-        People in the beam on {label}: an estimate
-      </h3>
+    <div className="stack" id={`exposure-${band}`}>
+      <h3 className="font-semibold">People in the beam on {label}: an estimate</h3>
       <div className="form__pair items-end">
         <FigureField
           id={`exposure-${band}-duty`}
@@ -84,7 +82,7 @@ export function ExposureEstimate({ band, antenna, powerAtFeedW }: Props) {
         and other transmitters are not in it. It is no survey of your site: your national rules, the
         evaluation they ask for and licensed practice come first.
       </p>
-    </section>
+    </div>
   );
 }
 

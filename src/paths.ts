@@ -33,6 +33,8 @@ export const paths = {
   stationPlace: (id: string) => `/stations/${id}/place`,
   stationSky: (id: string) => `/stations/${id}/sky`,
   stationEquipment: (id: string) => `/stations/${id}/equipment`,
+  /** Where the exposure estimate of a band stands. */
+  stationExposure: (id: string, band: string) => `/stations/${id}/equipment#exposure-${band}`,
   stationHours: (id: string) => `/stations/${id}/hours`,
   stationCrew: (id: string) => `/stations/${id}/crew`,
   stationProfile: (id: string) => `/stations/${id}/profile`,
@@ -54,6 +56,9 @@ export const paths = {
     stationPlace: (id: string) => `/api/v1/stations/${id}/place`,
     stationSky: (id: string) => `/api/v1/stations/${id}/sky`,
     stationEquipment: (id: string) => `/api/v1/stations/${id}/equipment`,
+    stationNoise: (id: string) => `/api/v1/stations/${id}/noise`,
+    stationNoiseRecord: (id: string, recordId: string) =>
+      `/api/v1/stations/${id}/noise/${recordId}`,
     stationHours: (id: string) => `/api/v1/stations/${id}/hours`,
     stationProfile: (id: string) => `/api/v1/stations/${id}/profile`,
     stationInvitations: (id: string) => `/api/v1/stations/${id}/invitations`,

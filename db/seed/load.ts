@@ -20,6 +20,7 @@ const FILLED: (keyof Tables)[] = [
   'sked',
   'crew_invitation',
   'station_crew',
+  'noise_record',
   'station_band',
   'station',
   'person_token',

@@ -11,6 +11,8 @@ import type { Viewer } from '../../src/server/auth/viewer';
 import { inTransaction } from '../../src/server/db/transaction';
 import { newId } from '../../src/server/ids';
 import type { Services } from '../../src/server/services';
+import { noiseRecordSchema } from '../../src/domain/station/noiseRecord';
+import { addNoiseRecord } from '../../src/server/stations/addNoiseRecord';
 import { createStation } from '../../src/server/stations/createStation';
 import { updateEquipment } from '../../src/server/stations/updateEquipment';
 import { updateHours } from '../../src/server/stations/updateHours';
@@ -113,6 +115,11 @@ async function loadStation(
     const { note, listed } = station;
     const profile = profileUpdateSchema.parse({ ...seen, note, listed });
     await updateProfile(services, keeper, id, profile);
+  }
+  for (const { daysAgo, ...measured } of station.noise ?? []) {
+    const measuredOn = new Date(nowMs - daysAgo * DAY_MS).toISOString().slice(0, 10);
+    const record = noiseRecordSchema.parse({ ...measured, measuredOn });
+    await addNoiseRecord({ ...services, now: () => nowMs }, keeper, id, record);
   }
   await addCrew(services, id, callSign, people);
   return id;

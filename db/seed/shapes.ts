@@ -26,7 +26,11 @@ export interface DemoStation {
   /** Days off, counted from the day on which the demo is loaded. */
   daysOffAhead: number[];
   bands: Partial<Record<BandId, BandSetup>>;
+  noise?: DemoNoise[];
 }
+
+/** A measurement, made so many days before the demo is loaded. */
+export type DemoNoise = { daysAgo: number } & Record<string, unknown>;
 
 const WORKDAYS: Weekday[] = [1, 2, 3, 4, 5];
 const WEEKEND: Weekday[] = [6, 7];
@@ -62,13 +66,15 @@ export function measured(systemTemperatureK: number): ReceiveChain {
   return { kind: 'measured', systemTemperatureK };
 }
 
-export const amplifier = (gainDb: number, noiseFigureDb: number): ReceiveStage => ({
+export const amplifier = (gainDb: number, noiseFigureDb: number, name?: string): ReceiveStage => ({
   kind: 'amplifier',
+  ...(name ? { name } : {}),
   gainDb,
   noiseFigureDb,
 });
-export const loss = (lossDb: number): ReceiveStage => ({
+export const loss = (lossDb: number, name?: string): ReceiveStage => ({
   kind: 'loss',
+  ...(name ? { name } : {}),
   lossDb,
   physicalTemperatureK: 290,
 });

@@ -1,17 +1,21 @@
 import { antennaFigures } from '../../domain/link/antenna';
 import { bandById, type BandId } from '../../domain/station/bands';
 import { antennaSchema } from '../../domain/station/equipmentSchema';
+import type { NoiseRecord } from '../../domain/station/noiseRecord';
 import type { Antenna, BandSetup, Polarization } from '../../domain/station/setup';
 import { formatNumber } from '../../domain/time/format';
 import { Button } from '../ui/Button';
 import { SelectField } from '../ui/Field';
 import { ChainForm } from './ChainForm';
+import { ExposureEstimate } from './ExposureEstimate';
 import { FigureField } from './FigureField';
 import { fieldId } from './useSave';
 
 interface Props {
   band: BandId;
   setup: BandSetup;
+  /** Noise record of this band. */
+  newest: NoiseRecord | undefined;
   /** Path of the setup in what is saved, for the problems. */
   path: string;
   errorOf: (path: string) => string | undefined;
@@ -28,7 +32,7 @@ export const POLARIZATION_WORDS: Record<Polarization, string> = {
 };
 
 /** Antenna, power and receiver on one band. */
-export function BandForm({ band, setup, path, errorOf, onChange, onRemove }: Props) {
+export function BandForm({ band, setup, newest, path, errorOf, onChange, onRemove }: Props) {
   const { label, centreMhz } = bandById(band);
   const { antenna } = setup;
   const field = (name: string) => ({
@@ -116,10 +120,14 @@ export function BandForm({ band, setup, path, errorOf, onChange, onRemove }: Pro
       </div>
       <ChainForm
         receive={setup.receive}
+        antenna={antenna}
+        frequencyMhz={centreMhz}
+        newest={newest}
         path={`${path}.receive`}
         errorOf={errorOf}
         onChange={(receive) => onChange({ ...setup, receive })}
       />
+      <ExposureEstimate band={band} antenna={antenna} powerAtFeedW={setup.powerAtFeedW} />
     </section>
   );
 }

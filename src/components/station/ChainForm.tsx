@@ -1,47 +1,60 @@
-import { chainTemperatureK, noiseFigureDb, stageSharesK } from '../../domain/link/receiveChain';
-import { receiveChainSchema } from '../../domain/station/equipmentSchema';
-import { MAX_RECEIVE_STAGES } from '../../domain/station/equipmentSchema';
-import type { ReceiveChain, ReceiveStage } from '../../domain/station/setup';
+import { useMemo } from 'react';
+import { chainReport, coldSkyK } from '../../domain/link/chainReport';
+import { chainTemperatureK, noiseFigureDb } from '../../domain/link/receiveChain';
+import { antennaSchema, receiveChainSchema } from '../../domain/station/equipmentSchema';
+import type { NoiseRecord } from '../../domain/station/noiseRecord';
+import type { Antenna, ReceiveChain } from '../../domain/station/setup';
 import { formatNumber } from '../../domain/time/format';
-import { Button } from '../ui/Button';
 import { SelectField } from '../ui/Field';
+import { ChainPicture } from './ChainPicture';
+import { ChainResult } from './ChainResult';
 import { FigureField } from './FigureField';
+import { noiseWords } from './noiseWords';
+import { newStage, StageList } from './StageList';
 import { fieldId } from './useSave';
 
 interface Props {
   receive: ReceiveChain;
+  /** For the cold sky in its beam. */
+  antenna: Antenna;
+  frequencyMhz: number;
+  /** Of this band. */
+  newest: NoiseRecord | undefined;
   path: string;
   errorOf: (path: string) => string | undefined;
   onChange: (receive: ReceiveChain) => void;
 }
 
-/** The receiver: one measured figure, or stage by stage from the feed on. */
-export function ChainForm({ receive, path, errorOf, onChange }: Props) {
+type Known = 'figure' | 'record' | 'stages';
+
+/** The receiver: one measured figure, the newest noise record, or stage by stage from the feed on. */
+export function ChainForm(props: Props) {
+  const { receive, newest, path, errorOf, onChange } = props;
   const field = (name: string) => ({
     id: fieldId(`${path}.${name}`),
     error: errorOf(`${path}.${name}`),
   });
+  const known: Known =
+    receive.kind === 'stages' ? 'stages' : receive.fromNewestRecord ? 'record' : 'figure';
   return (
     <div className="stack">
       <div className="form__pair">
         <SelectField
           {...field('kind')}
           label="Receiver"
-          value={receive.kind}
-          onChange={(event) => onChange(newChain(event.target.value as ReceiveChain['kind']))}
+          value={known}
+          onChange={(event) => onChange(newChain(event.target.value as Known, newest))}
+          note={
+            newest || known === 'record' ? undefined : 'Measured noise is entered further down.'
+          }
         >
-          <option value="measured">System temperature, measured</option>
+          <option value="figure">System temperature, one figure</option>
+          <option value="record" disabled={!newest}>
+            System temperature, newest measured
+          </option>
           <option value="stages">Stage by stage</option>
         </SelectField>
-        {receive.kind === 'measured' ? (
-          <FigureField
-            {...field('systemTemperatureK')}
-            label="System temperature, K"
-            value={receive.systemTemperatureK}
-            onChange={(value) => onChange({ ...receive, systemTemperatureK: value ?? NaN })}
-            note="On cold sky, away from the Moon and the Sun."
-          />
-        ) : (
+        {receive.kind === 'stages' ? (
           <FigureField
             {...field('spilloverK')}
             label="Noise from the ground, K (may be empty)"
@@ -49,156 +62,79 @@ export function ChainForm({ receive, path, errorOf, onChange }: Props) {
             onChange={(spilloverK) => onChange({ ...receive, spilloverK })}
             note="Spillover and what comes through the mesh."
           />
+        ) : receive.fromNewestRecord ? (
+          <div className="field">
+            <span className="field__label">System temperature</span>
+            <p className="py-2">
+              {newest ? noiseWords(newest) : 'No record of this band is left.'}{' '}
+              <span className="quiet">Follows the newest record of this band.</span>
+            </p>
+          </div>
+        ) : (
+          <FigureField
+            {...field('systemTemperatureK')}
+            label="System temperature, K"
+            value={receive.systemTemperatureK}
+            onChange={(value) => onChange({ ...receive, systemTemperatureK: value ?? NaN })}
+            note="On cold sky, away from the Moon and the Sun."
+          />
         )}
       </div>
-      {receive.kind === 'stages' ? (
-        <>
-          <StageList
-            {...{ path, errorOf }}
-            stages={receive.stages}
-            onChange={(stages) => onChange({ ...receive, stages })}
-          />
-          {errorOf(`${path}.stages`) ? (
-            <p className="field__error">{errorOf(`${path}.stages`)}</p>
-          ) : null}
-        </>
-      ) : null}
+      {receive.kind === 'stages' ? <Chain {...props} receive={receive} /> : null}
     </div>
   );
 }
 
-function StageList({
-  stages,
+function Chain({
+  receive,
+  antenna,
+  frequencyMhz,
   path,
   errorOf,
   onChange,
-}: {
-  stages: ReceiveStage[];
-  path: string;
-  errorOf: Props['errorOf'];
-  onChange: (stages: ReceiveStage[]) => void;
-}) {
-  const known = receiveChainSchema.safeParse({ kind: 'stages', stages }).success;
-  const shares = known ? stageSharesK(stages) : null;
-  const total = known ? chainTemperatureK(stages) : null;
-  const set = (index: number, stage: ReceiveStage) =>
-    onChange(stages.map((old, at) => (at === index ? stage : old)));
+}: Props & { receive: Extract<ReceiveChain, { kind: 'stages' }> }) {
+  const { stages } = receive;
+  const skyK = useMemo(
+    () => (antennaSchema.safeParse(antenna).success ? coldSkyK(antenna, frequencyMhz) : null),
+    [antenna, frequencyMhz],
+  );
+  const complete = receiveChainSchema.safeParse(receive).success;
+  const report =
+    complete && skyK !== null ? chainReport(stages, skyK, receive.spilloverK ?? 0) : null;
+  const receiverK = complete ? chainTemperatureK(stages) : null;
   return (
-    <div className="stack">
-      <ol className="m-0 list-none p-0">
-        {stages.map((stage, index) => {
-          const field = (name: string) => ({
-            id: fieldId(`${path}.stages.${index}.${name}`),
-            error: errorOf(`${path}.stages.${index}.${name}`),
-          });
-          return (
-            <li
-              key={index}
-              className="grid grid-cols-2 items-start gap-3 border-b border-rule py-3 sm:grid-cols-[9rem_1fr_1fr_5rem_auto]"
-            >
-              <SelectField
-                {...field('kind')}
-                label={index === 0 ? 'Stage 1, at the feed' : `Stage ${index + 1}`}
-                value={stage.kind}
-                onChange={(event) =>
-                  set(index, newStage(event.target.value as ReceiveStage['kind']))
-                }
-              >
-                <option value="amplifier">Amplifier</option>
-                <option value="loss">Loss</option>
-              </SelectField>
-              {stage.kind === 'amplifier' ? (
-                <>
-                  <FigureField
-                    {...field('gainDb')}
-                    label="Gain, dB"
-                    value={stage.gainDb}
-                    onChange={(value) => set(index, { ...stage, gainDb: value ?? NaN })}
-                  />
-                  <FigureField
-                    {...field('noiseFigureDb')}
-                    label="Noise figure, dB"
-                    value={stage.noiseFigureDb}
-                    onChange={(value) => set(index, { ...stage, noiseFigureDb: value ?? NaN })}
-                  />
-                </>
-              ) : (
-                <>
-                  <FigureField
-                    {...field('lossDb')}
-                    label="Loss, dB"
-                    value={stage.lossDb}
-                    onChange={(value) => set(index, { ...stage, lossDb: value ?? NaN })}
-                  />
-                  <FigureField
-                    {...field('physicalTemperatureK')}
-                    label="Its temperature, K"
-                    note="Empty: 290."
-                    value={stage.physicalTemperatureK}
-                    onChange={(physicalTemperatureK) =>
-                      set(index, { ...stage, physicalTemperatureK })
-                    }
-                  />
-                </>
-              )}
-              <div className="grid gap-1">
-                <span className="label">Adds, K</span>
-                <span className="py-2">{shares ? formatNumber(shares[index]!, 1) : '–'}</span>
-              </div>
-              <div className="sm:pt-[22px]">
-                <Button
-                  look="bare"
-                  icon="trash"
-                  aria-label={`Remove stage ${index + 1}`}
-                  onClick={() => onChange(stages.filter((_, at) => at !== index))}
-                >
-                  <span className="sm:sr-only">Remove</span>
-                </Button>
-              </div>
-            </li>
-          );
-        })}
-      </ol>
-      <div className="row justify-between">
-        <div className="row">
-          <Button
-            look="bare"
-            icon="plus"
-            disabled={stages.length >= MAX_RECEIVE_STAGES}
-            onClick={() => onChange([...stages, newStage('amplifier')])}
-          >
-            Add an amplifier
-          </Button>
-          <Button
-            look="bare"
-            icon="plus"
-            disabled={stages.length >= MAX_RECEIVE_STAGES}
-            onClick={() => onChange([...stages, newStage('loss')])}
-          >
-            Add a loss
-          </Button>
-        </div>
-        <p role="status">
-          {total === null ? (
-            <span className="quiet">The sum appears when every stage is complete.</span>
-          ) : (
-            <>
-              Receiver <strong>{formatNumber(total, 1)} K</strong>, noise figure{' '}
-              {formatNumber(noiseFigureDb(total), 2)} dB
-            </>
-          )}
+    <>
+      <StageList
+        {...{ stages, path, errorOf, frequencyMhz, report }}
+        onChange={(changed) => onChange({ ...receive, stages: changed })}
+      />
+      {errorOf(`${path}.stages`) ? (
+        <p className="field__error">{errorOf(`${path}.stages`)}</p>
+      ) : null}
+      {report ? (
+        <>
+          <ChainPicture stages={stages} report={report} />
+          <ChainResult stages={stages} report={report} />
+        </>
+      ) : (
+        <p role="status" className="quiet">
+          {receiverK === null
+            ? 'Temperatures appear when every stage is complete.'
+            : `Receiver ${formatNumber(receiverK, 1)} K, noise figure ${formatNumber(noiseFigureDb(receiverK), 2)} dB. The system temperature appears when the antenna is complete.`}
         </p>
-      </div>
-    </div>
+      )}
+    </>
   );
 }
 
-function newStage(kind: ReceiveStage['kind']): ReceiveStage {
-  return kind === 'amplifier' ? { kind, gainDb: NaN, noiseFigureDb: NaN } : { kind, lossDb: NaN };
-}
-
-function newChain(kind: ReceiveChain['kind']): ReceiveChain {
-  return kind === 'measured'
-    ? { kind, systemTemperatureK: NaN }
-    : { kind, stages: [newStage('loss'), newStage('amplifier')] };
+function newChain(known: Known, newest: NoiseRecord | undefined): ReceiveChain {
+  if (known === 'stages') {
+    return { kind: 'stages', stages: [newStage('loss'), newStage('amplifier')] };
+  }
+  if (known === 'figure') return { kind: 'measured', systemTemperatureK: NaN };
+  return {
+    kind: 'measured',
+    systemTemperatureK: newest?.figures.systemTemperatureK ?? NaN,
+    fromNewestRecord: true,
+  };
 }

@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { BANDS, bandById, type BandId } from '../../domain/station/bands';
 import { equipmentUpdateSchema } from '../../domain/station/schema';
+import { newestRecord, type NoiseRecord } from '../../domain/station/noiseRecord';
 import type { BandSetup, Polarization } from '../../domain/station/setup';
 import type { BandEquipment } from '../../domain/station/views';
 import { paths } from '../../paths';
@@ -11,24 +12,30 @@ import { BandForm } from './BandForm';
 import { SaveBar } from './SaveBar';
 import { useEditor } from './useEditor';
 
+export interface EquipmentStation {
+  id: string;
+  version: number;
+  equipment: BandEquipment[];
+  transmitElevationFromDeg?: number | undefined;
+}
+
 interface Props {
-  station: {
-    id: string;
-    version: number;
-    equipment: BandEquipment[];
-    transmitElevationFromDeg?: number | undefined;
-  };
+  station: EquipmentStation;
+  /** Measured noise, newest first. */
+  records: NoiseRecord[];
   next?: string | undefined;
+  onSaved: (equipment: BandEquipment[]) => void;
 }
 
 /** Equipment band by band. */
-export function EquipmentEditor({ station, next }: Props) {
+export function EquipmentEditor({ station, records, next, onSaved }: Props) {
   const [bands, setBands] = useState(station.equipment);
   const editor = useEditor({
     url: paths.api.stationEquipment(station.id),
     schema: equipmentUpdateSchema,
     version: station.version,
     next,
+    onSaved: () => onSaved(bands),
   });
   const change = (changed: BandEquipment[]) => {
     setBands(changed);
@@ -68,6 +75,7 @@ export function EquipmentEditor({ station, next }: Props) {
             key={band}
             band={band}
             setup={setup}
+            newest={newestRecord(records, band)}
             path={`equipment.${index}.setup`}
             errorOf={editor.errorOf}
             onChange={(changed) =>

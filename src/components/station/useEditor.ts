@@ -8,10 +8,11 @@ interface Options {
   version: number;
   /** Where to go after saving; absent: stay and say so. */
   next?: string | undefined;
+  onSaved?: (() => void) | undefined;
 }
 
 /** State of a page that edits one part of a station: dirty or saved, and the version to save over. */
-export function useEditor({ url, schema, version, next }: Options) {
+export function useEditor({ url, schema, version, next, onSaved }: Options) {
   const [current, setCurrent] = useState(version);
   const [unsaved, setUnsaved] = useState(false);
   const [leaving, setLeaving] = useState(false);
@@ -31,6 +32,7 @@ export function useEditor({ url, schema, version, next }: Options) {
       if (!answer) return;
       setCurrent(answer.version);
       setUnsaved(false);
+      onSaved?.();
       if (next) {
         setLeaving(true);
         window.location.assign(next);

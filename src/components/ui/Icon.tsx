@@ -1,6 +1,8 @@
+import arrowDown from 'lucide-static/icons/arrow-down.svg?raw';
 import arrowLeft from 'lucide-static/icons/arrow-left.svg?raw';
 import arrowLeftRight from 'lucide-static/icons/arrow-left-right.svg?raw';
 import arrowRight from 'lucide-static/icons/arrow-right.svg?raw';
+import arrowUp from 'lucide-static/icons/arrow-up.svg?raw';
 import calendarDays from 'lucide-static/icons/calendar-days.svg?raw';
 import calendarRange from 'lucide-static/icons/calendar-range.svg?raw';
 import check from 'lucide-static/icons/check.svg?raw';
@@ -19,9 +21,11 @@ import undo from 'lucide-static/icons/undo-2.svg?raw';
 import upload from 'lucide-static/icons/upload.svg?raw';
 
 const icons = {
+  arrowDown,
   arrowLeft,
   arrowLeftRight,
   arrowRight,
+  arrowUp,
   calendarDays,
   calendarRange,
   check,

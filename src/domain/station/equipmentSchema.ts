@@ -1,7 +1,10 @@
 import { z } from 'zod';
 import { BAND_IDS } from './bands';
-import { figure, record } from './fields';
+import { LEAST_SYSTEM_K, MOST_SYSTEM_K } from '../link/measuredNoise';
+import { figure, record, words } from './fields';
 import type { Antenna, BandSetup, ReceiveChain, ReceiveStage } from './setup';
+
+const stageName = words('The name of a stage', 30).optional();
 
 const kindError = (sentence: string) => ({ error: sentence });
 
@@ -27,11 +30,13 @@ export const receiveStageSchema: z.ZodType<ReceiveStage> = z.discriminatedUnion(
   [
     record({
       kind: z.literal('amplifier'),
+      name: stageName,
       gainDb: figure('The gain of a stage', -20, 100, 'dB'),
       noiseFigureDb: figure('The noise figure of a stage', 0, 40, 'dB'),
     }),
     record({
       kind: z.literal('loss'),
+      name: stageName,
       lossDb: figure('The loss of a stage', 0, 60, 'dB'),
       physicalTemperatureK: figure('The temperature of a stage', 4, 400, 'K').optional(),
     }),
@@ -46,7 +51,10 @@ export const receiveChainSchema: z.ZodType<ReceiveChain> = z.discriminatedUnion(
   [
     record({
       kind: z.literal('measured'),
-      systemTemperatureK: figure('The system temperature', 3, 30_000, 'K'),
+      systemTemperatureK: figure('The system temperature', LEAST_SYSTEM_K, MOST_SYSTEM_K, 'K'),
+      fromNewestRecord: z
+        .literal(true, { error: 'To use the newest record say true, else leave it out.' })
+        .optional(),
     }),
     record({
       kind: z.literal('stages'),

@@ -8,12 +8,20 @@ export type Antenna =
 
 /** One stage from the feed towards the receiver: an amplifier, or a loss at a physical temperature. */
 export type ReceiveStage =
-  | { kind: 'amplifier'; gainDb: number; noiseFigureDb: number }
-  | { kind: 'loss'; lossDb: number; physicalTemperatureK?: number | undefined };
+  | { kind: 'amplifier'; name?: string | undefined; gainDb: number; noiseFigureDb: number }
+  | {
+      kind: 'loss';
+      name?: string | undefined;
+      lossDb: number;
+      physicalTemperatureK?: number | undefined;
+    };
 
-/** `measured`: system temperature on cold sky away from the Moon. `stages`: in order, feed first. */
+/**
+ * `measured`: system temperature on cold sky away from the Moon; with `fromNewestRecord` that of the band's newest
+ * noise record, which the server puts in whenever the equipment is read. `stages`: in order, feed first.
+ */
 export type ReceiveChain =
-  | { kind: 'measured'; systemTemperatureK: number }
+  | { kind: 'measured'; systemTemperatureK: number; fromNewestRecord?: true | undefined }
   | { kind: 'stages'; stages: ReceiveStage[]; spilloverK?: number | undefined };
 
 export interface BandSetup {

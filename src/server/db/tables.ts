@@ -1,6 +1,7 @@
 import type { Generated, Insertable, Selectable } from 'kysely';
 import type { BandId } from '../../domain/station/bands';
 import type { ModeId } from '../../domain/station/modes';
+import type { FluxAt, NoiseMethod } from '../../domain/station/noiseRecord';
 import type { SkedEventKind, SkedResult, SkedState } from '../../domain/sked/types';
 
 export type Role = 'operator' | 'coordinator' | 'administrator';
@@ -53,6 +54,25 @@ export interface StationBandTable {
   station_id: string;
   band: BandId;
   setup_json: string;
+}
+
+export interface NoiseRecordTable {
+  id: string;
+  station_id: string;
+  band: BandId;
+  /** Day in UTC, "2027-01-18". */
+  measured_on: string;
+  method: NoiseMethod;
+  y_db: number;
+  hot_k: number | null;
+  cold_k: number | null;
+  flux_sfu: number | null;
+  flux_at: FluxAt | null;
+  gain_dbi: number | null;
+  beamwidth_deg: number | null;
+  note: Generated<string>;
+  recorded_by: string | null;
+  created_at: number;
 }
 
 export interface StationCrewTable {
@@ -164,6 +184,7 @@ export interface Tables {
   person_token: PersonTokenTable;
   station: StationTable;
   station_band: StationBandTable;
+  noise_record: NoiseRecordTable;
   station_crew: StationCrewTable;
   crew_invitation: CrewInvitationTable;
   sked: SkedTable;
@@ -178,6 +199,7 @@ export interface Tables {
 
 export type PersonRow = Selectable<PersonTable>;
 export type StationRow = Selectable<StationTable>;
+export type NoiseRecordRow = Selectable<NoiseRecordTable>;
 export type SkedRow = Selectable<SkedTable>;
 export type SkedPartyRow = Selectable<SkedPartyTable>;
 export type SkedEventRow = Selectable<SkedEventTable>;

@@ -7,6 +7,7 @@ import type { PublicLocatorLength } from '../../domain/station/schema';
 import type { BandSetup } from '../../domain/station/setup';
 import type { BandEquipment, CrewRole, CrewStation, MissingPart } from '../../domain/station/views';
 import type { SkyLimits } from '../../domain/sky/limits';
+import { fillFromNewestRecords } from './noiseRecordRows';
 
 /** Sky as saved; an empty object is a sky nobody has described yet. */
 export function skyOf(row: Pick<StationRow, 'sky_json'>): SkyLimits {
@@ -17,7 +18,7 @@ export function hoursOf(row: Pick<StationRow, 'hours_json'>): StationHours {
   return JSON.parse(row.hours_json) as StationHours;
 }
 
-/** Equipment of the stations, by station, bands from low to high. */
+/** Equipment of the stations, by station, bands from low to high; measured noise as of the newest record. */
 export async function equipmentOf(
   db: Db | Tx,
   stationIds: readonly string[],
@@ -35,6 +36,7 @@ export async function equipmentOf(
       .get(row.station_id)
       ?.push({ band: row.band, setup: JSON.parse(row.setup_json) as BandSetup });
   }
+  await fillFromNewestRecords(db, found);
   return found;
 }
 

@@ -4,12 +4,14 @@ interface Props {
   open: boolean;
   /** The question the dialog asks. */
   title: string;
+  /** For tables side by side. */
+  wide?: boolean;
   onClose: () => void;
   children: ReactNode;
 }
 
 /** A modal dialog on the browser's own element: focus stays inside, Escape closes, focus returns. */
-export function Dialog({ open, title, onClose, children }: Props) {
+export function Dialog({ open, title, wide = false, onClose, children }: Props) {
   const element = useRef<HTMLDialogElement>(null);
   const titleId = useId();
   useEffect(() => {
@@ -19,7 +21,12 @@ export function Dialog({ open, title, onClose, children }: Props) {
     if (!open && dialog.open) dialog.close();
   }, [open]);
   return (
-    <dialog ref={element} className="dialog" aria-labelledby={titleId} onClose={onClose}>
+    <dialog
+      ref={element}
+      className={wide ? 'dialog dialog--wide' : 'dialog'}
+      aria-labelledby={titleId}
+      onClose={onClose}
+    >
       {open ? (
         <div className="stack">
           <h2 id={titleId}>{title}</h2>

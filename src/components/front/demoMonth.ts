@@ -47,7 +47,7 @@ const PAIR: (Omit<ChosenStation, 'usable' | 'id' | 'own' | 'token'> & {
     locator: 'FN43',
     site: { latitudeDeg: 43.8, longitudeDeg: -71.6, heightM: 240 },
     timeZone: 'America/New_York',
-    equipment: dish(1.9, 110),
+    equipment: dish(1.9, 70),
     sky: {
       elevationFromDeg: 10,
       blocked: [

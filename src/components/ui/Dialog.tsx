@@ -17,9 +17,13 @@ export function Dialog({ open, title, wide = false, onClose, children }: Props) 
   useEffect(() => {
     const dialog = element.current;
     if (!dialog) return;
-    if (open && !dialog.open) dialog.showModal();
+    if (open && !dialog.open) {
+      dialog.showModal();
+      // Its buttons stand under the tables: focus on the first of them would scroll the head away.
+      if (wide) document.getElementById(titleId)?.focus();
+    }
     if (!open && dialog.open) dialog.close();
-  }, [open]);
+  }, [open, wide, titleId]);
   return (
     <dialog
       ref={element}
@@ -29,7 +33,9 @@ export function Dialog({ open, title, wide = false, onClose, children }: Props) 
     >
       {open ? (
         <div className="stack">
-          <h2 id={titleId}>{title}</h2>
+          <h2 id={titleId} tabIndex={wide ? -1 : undefined}>
+            {title}
+          </h2>
           {children}
         </div>
       ) : null}

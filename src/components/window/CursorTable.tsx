@@ -133,7 +133,7 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, 
             .{link?.moonUp ? ` ${linkSentence(link)}` : null}
           </span>
         ) : null}
-        {quality ? (
+        {quality && !link ? (
           <span className="figures__quality">
             {QUALITY_NAMES[quality.basis]} <QualityChip quality={quality} />
           </span>

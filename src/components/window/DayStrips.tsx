@@ -167,7 +167,14 @@ function Strip({
           )}
         />
       ))}
-      <path className="strip__edge" d={boxes(layers.windows, 3, HEIGHT - 6)} />
+      <path
+        className="strip__edge"
+        d={boxes(
+          layers.windows.filter((_, at) => layers.windowQuality[at]!.step !== 'below'),
+          3,
+          HEIGHT - 6,
+        )}
+      />
       <path className="strip__taken" d={boxes(taken, 1, HEIGHT - 2)} />
     </svg>
   );

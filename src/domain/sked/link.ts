@@ -40,6 +40,7 @@ export function skedLink(
     frequencyMhz: sked.frequencyMhz,
     mode: sked.mode,
     timeMs,
+    chance: { slotMinutes: (sked.endMs - sked.startMs) / MINUTE_MS },
   });
   return { sheets: linkSheets(result, setups, sked.mode, bandById(sked.band).label, timeMs) };
 }

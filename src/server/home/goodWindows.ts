@@ -70,6 +70,7 @@ export async function goodWindows(
     const curve = judgedCurve(judgeOf(judged, frequencyMhz, mode), cache.table(span));
     for (const window of windows) {
       const { timeMs: bestMs, quality } = bestMoment(curve, window);
+      if (quality.step === 'below') continue;
       const { geocentricDistanceKm } = moonSampleDirect(own.site, bestMs);
       const distanceLossDb = 40 * Math.log10(geocentricDistanceKm / LEAST_DISTANCE_KM);
       const degradationDb = skyAndDegradation(model, bestMs).degradationDb;

@@ -17,6 +17,8 @@ export const RasterBands = memo(function RasterBands({
   keepClear: Interval[];
 }) {
   const offset = (frame.rowHeight - frame.bandHeight) / 2;
+  // Below the threshold a window has the dotted outline of its bands alone.
+  const edged = layers.windows.filter((_, index) => layers.windowQuality[index]!.step !== 'below');
   const everything = rowPieces(frame, [...layers.windows, ...layers.outside, ...layers.hidden]);
   return (
     <g aria-hidden="true">
@@ -35,7 +37,7 @@ export const RasterBands = memo(function RasterBands({
       })}
       <path
         className="band__edge"
-        d={rectanglesPath(frame, rowPieces(frame, layers.windows), offset, frame.bandHeight)}
+        d={rectanglesPath(frame, rowPieces(frame, edged), offset, frame.bandHeight)}
       />
       {layers.windows.map((window, index) => {
         const quality = layers.windowQuality[index]!;

@@ -1,7 +1,7 @@
-import { formatNumber } from '../../domain/time/format';
-import { QUALITY_NAME, QUALITY_SCALE } from '../../domain/window/quality';
+import { QUALITY_NAMES, scaleWords, type QualityBasis } from '../../domain/window/quality';
 
 interface Props {
+  basis: QualityBasis;
   /** Call signs in the order of the question. */
   callSigns: string[];
   /** Whether anybody's hours are known; else there is no grey ground to explain. */
@@ -12,18 +12,24 @@ interface Props {
 }
 
 /** Every sign of the raster with its word. */
-export function RasterLegend({ callSigns, hoursKnown, countsHours, skeds }: Props) {
+export function RasterLegend({ basis, callSigns, hoursKnown, countsHours, skeds }: Props) {
   const [first, second] = callSigns;
   return (
     <div className="legend">
       <ul>
-        {QUALITY_SCALE.map(({ step }, index) => (
+        <li>{QUALITY_NAMES[basis]}, dB</li>
+        {scaleWords(basis).map(({ step, words }) => (
           <li key={step}>
             <span className={`legend__band chip--${step}`} />
-            {step} {rangeWords(index)}
+            {step} {words}
           </li>
         ))}
-        <li>dB of {QUALITY_NAME.toLowerCase()}, as a loss</li>
+        {basis === 'margin' ? (
+          <li>
+            <span className="legend__band chip--below" />
+            below under 0.0
+          </li>
+        ) : null}
       </ul>
       <ul>
         <li>
@@ -59,12 +65,4 @@ export function RasterLegend({ callSigns, hoursKnown, countsHours, skeds }: Prop
       ) : null}
     </div>
   );
-}
-
-/** "under −4.0" for the weakest step, "from −2.5" for the others. */
-function rangeWords(index: number): string {
-  const { fromDb } = QUALITY_SCALE[index]!;
-  if (Number.isFinite(fromDb)) return `from ${formatNumber(fromDb, 1)}`;
-  const next = QUALITY_SCALE[index + 1];
-  return next ? `under ${formatNumber(next.fromDb, 1)}` : '';
 }

@@ -1,9 +1,10 @@
 import { memo } from 'react';
 import { DateTime } from 'luxon';
-import { formatHoursMinutes, formatNumber } from '../../domain/time/format';
+import { formatHoursMinutes } from '../../domain/time/format';
 import { DAY_MS } from '../../domain/time/interval';
 import type { RasterDay } from '../../domain/window/layers';
 import type { MoonPhase } from '../../domain/window/moonPhase';
+import { qualityFigure } from '../../domain/window/quality';
 import { MoonGlyph } from './MoonGlyph';
 import { rowTop, type RasterFrame } from './rasterGeometry';
 import type { RasterAxis } from './rasterView';
@@ -133,7 +134,7 @@ export const RasterSums = memo(function RasterSums({
             textAnchor="end"
             className={day.best ? 'chart__strong' : undefined}
           >
-            {day.best ? formatNumber(day.best.db, 1) : '–'}
+            {day.best ? qualityFigure(day.best) : '–'}
           </text>
         </g>
       ))}

@@ -1,5 +1,6 @@
 import { memo, type KeyboardEvent, type MouseEvent } from 'react';
-import { formatNumber, formatUtcRange } from '../../domain/time/format';
+import { formatUtcRange } from '../../domain/time/format';
+import { QUALITY_NAMES, qualityWords } from '../../domain/window/quality';
 import { instantAt, rectanglesPath, rowPieces, type RasterFrame } from './rasterGeometry';
 import type { RasterLayers } from './rasterView';
 
@@ -60,7 +61,7 @@ export const RasterTargets = memo(function RasterTargets({
             role="button"
             tabIndex={index === (chosen ?? 0) ? 0 : -1}
             aria-pressed={index === chosen}
-            aria-label={`${formatUtcRange(window)}, best ${formatNumber(quality.db, 1)} dB, ${quality.step}`}
+            aria-label={`${formatUtcRange(window)}, best ${QUALITY_NAMES[quality.basis].toLowerCase()} ${qualityWords(quality)}`}
             d={rectanglesPath(frame, pieces, 0, frame.rowHeight)}
             onClick={(event) => press(event, index)}
             onKeyDown={(event) => walk(event, index)}

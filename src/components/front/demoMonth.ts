@@ -1,3 +1,4 @@
+import type { BandEquipment } from '../../domain/station/views';
 import { expandUsableHours, type WeeklyStretch } from '../../domain/time/weeklyHours';
 import { LayersCache, windowLayers } from '../../domain/window/layers';
 import { emptyQuestion, questionSpan } from '../../domain/window/question';
@@ -17,6 +18,7 @@ const PAIR: (Omit<ChosenStation, 'usable' | 'id' | 'own' | 'token'> & {
     locator: 'JO98',
     site: { latitudeDeg: 58.4, longitudeDeg: 18.6, heightM: 20 },
     timeZone: 'Europe/Stockholm',
+    equipment: dish(2.4, 150),
     sky: {
       elevationFromDeg: 8,
       blocked: [
@@ -45,6 +47,7 @@ const PAIR: (Omit<ChosenStation, 'usable' | 'id' | 'own' | 'token'> & {
     locator: 'FN43',
     site: { latitudeDeg: 43.8, longitudeDeg: -71.6, heightM: 240 },
     timeZone: 'America/New_York',
+    equipment: dish(1.9, 70),
     sky: {
       elevationFromDeg: 10,
       blocked: [
@@ -68,6 +71,20 @@ const PAIR: (Omit<ChosenStation, 'usable' | 'id' | 'own' | 'token'> & {
     weekly: everyDay('06:30', '23:00'),
   },
 ];
+
+function dish(diameterM: number, powerAtFeedW: number): BandEquipment[] {
+  return [
+    {
+      band: '1296',
+      setup: {
+        antenna: { kind: 'dish', diameterM, apertureEfficiency: 0.55 },
+        polarization: 'rightCircular',
+        powerAtFeedW,
+        receive: { kind: 'measured', systemTemperatureK: 60 },
+      },
+    },
+  ];
+}
 
 function everyDay(from: string, to: string): WeeklyStretch[] {
   return ([1, 2, 3, 4, 5, 6, 7] as const).map((weekday) => ({ weekday, from, to }));

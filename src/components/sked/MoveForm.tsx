@@ -12,7 +12,7 @@ import {
   formatLocalRange,
   formatUtcRange,
 } from '../../domain/time/format';
-import { QUALITY_NAME } from '../../domain/window/quality';
+import { QUALITY_NAMES, type QualityBasis } from '../../domain/window/quality';
 import { Button, ButtonLink } from '../ui/Button';
 import { TextAreaField, TextField } from '../ui/Field';
 import { QualityChip } from '../ui/Quality';
@@ -26,6 +26,8 @@ interface Props {
   as: string;
   parties: { callSign: string; timeZone: string }[];
   choices: (MoveChoice & { href: string })[];
+  /** By what the choices are judged. */
+  basis: QualityBasis;
   initial: MoveFields;
   words: string;
   errors: Partial<Record<keyof MoveFields | 'words', string>>;
@@ -141,7 +143,8 @@ export function MoveForm(props: Props) {
       <section aria-labelledby="windows-heading">
         <h2 id="windows-heading">Common windows in the next two weeks</h2>
         <p className="label">
-          Everybody awake, nobody taken, room for the whole slot. {QUALITY_NAME} at the best moment.
+          Everybody awake, nobody taken, room for the whole slot. {QUALITY_NAMES[props.basis]} in dB
+          at the best moment.
         </p>
         {props.choices.length > 0 ? (
           <ul className="mt-2 border-t border-ink">

@@ -4,25 +4,38 @@ interface Props {
   open: boolean;
   /** The question the dialog asks. */
   title: string;
+  /** For tables side by side. */
+  wide?: boolean;
   onClose: () => void;
   children: ReactNode;
 }
 
 /** A modal dialog on the browser's own element: focus stays inside, Escape closes, focus returns. */
-export function Dialog({ open, title, onClose, children }: Props) {
+export function Dialog({ open, title, wide = false, onClose, children }: Props) {
   const element = useRef<HTMLDialogElement>(null);
   const titleId = useId();
   useEffect(() => {
     const dialog = element.current;
     if (!dialog) return;
-    if (open && !dialog.open) dialog.showModal();
+    if (open && !dialog.open) {
+      dialog.showModal();
+      // Its buttons stand under the tables: focus on the first of them would scroll the head away.
+      if (wide) document.getElementById(titleId)?.focus();
+    }
     if (!open && dialog.open) dialog.close();
-  }, [open]);
+  }, [open, wide, titleId]);
   return (
-    <dialog ref={element} className="dialog" aria-labelledby={titleId} onClose={onClose}>
+    <dialog
+      ref={element}
+      className={wide ? 'dialog dialog--wide' : 'dialog'}
+      aria-labelledby={titleId}
+      onClose={onClose}
+    >
       {open ? (
         <div className="stack">
-          <h2 id={titleId}>{title}</h2>
+          <h2 id={titleId} tabIndex={wide ? -1 : undefined}>
+            {title}
+          </h2>
           {children}
         </div>
       ) : null}

@@ -7,7 +7,8 @@ import {
   formatNumber,
 } from '../../domain/time/format';
 import type { WindowLayers } from '../../domain/window/layers';
-import { RANKING_SENTENCE } from '../../domain/window/ranking';
+import { QUALITY_NAMES } from '../../domain/window/quality';
+import { rankingSentence } from '../../domain/window/ranking';
 import type { ChosenStation } from '../../domain/window/searchData';
 import { QualityChip } from '../ui/Quality';
 
@@ -20,7 +21,7 @@ export interface ListedWindow {
 }
 
 interface Props {
-  layers: Pick<WindowLayers, 'windows' | 'windowQuality'>;
+  layers: Pick<WindowLayers, 'windows' | 'windowQuality' | 'judge'>;
   listed: ListedWindow[];
   stations: Pick<ChosenStation, 'callSign' | 'timeZone'>[];
   chosen?: number | null | undefined;
@@ -35,13 +36,14 @@ export const BestFirst = memo(function BestFirst({
   chosen,
   onChoose,
 }: Props) {
+  const { basis } = layers.judge;
   const clocks = stations.slice(0, 2).filter((station) => station.timeZone !== null);
   const looks = stations.slice(0, 2);
   return (
     <section aria-labelledby="best-first">
       <div className="best__head">
         <h2 id="best-first">Best first</h2>
-        <p className="label">{RANKING_SENTENCE} Times UTC.</p>
+        <p className="label">{rankingSentence(basis)} Times UTC.</p>
       </div>
       <table className="table--cards best table">
         <thead>
@@ -59,7 +61,7 @@ export const BestFirst = memo(function BestFirst({
             <th scope="col" className="figure">
               Best
             </th>
-            <th scope="col">Degradation, dB</th>
+            <th scope="col">{QUALITY_NAMES[basis]}, dB</th>
             {clocks.map((station) => (
               <th key={station.callSign} scope="col" className="figure">
                 {station.callSign}

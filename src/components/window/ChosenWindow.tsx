@@ -48,6 +48,7 @@ export const ChosenWindow = memo(function ChosenWindow({
         onSlot={(slot) => onChoice({ ...choice, slot })}
         stations={answer.stations}
         band={answer.question.band}
+        mode={answer.question.mode}
         signedIn={signedIn}
         signInHref={signInHref}
         nowMs={nowMs}

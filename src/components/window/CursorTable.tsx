@@ -1,7 +1,16 @@
+import type { ReactNode } from 'react';
 import type { MoonTable } from '../../domain/ephemeris';
 import { dopplerHz, pathLossDb } from '../../domain/link';
+import { REFERENCE_BANDWIDTH_HZ } from '../../domain/link/modes';
+import type { LinkMoment } from '../../domain/link/moment';
 import { formatClock, formatDoppler, formatLocal, formatNumber } from '../../domain/time/format';
-import type { Quality } from '../../domain/window/quality';
+import { chanceWords } from '../../domain/window/ledgerSheet';
+import {
+  QUALITY_NAMES,
+  qualityFigure,
+  qualityOfMargin,
+  type Quality,
+} from '../../domain/window/quality';
 import type { ChosenStation } from '../../domain/window/searchData';
 import { QualityChip } from '../ui/Quality';
 
@@ -10,22 +19,32 @@ interface Props {
   stations: ChosenStation[];
   cursorMs: number;
   frequencyMhz: number;
-  quality: Quality;
+  /** Null while the Moon is not up for all and there is no margin. */
+  quality: Quality | null;
+  /** The link of two equipped stations at that very instant; null for others. */
+  link: LinkMoment | null;
+}
+
+interface Row {
+  name: string;
+  unit: string;
+  values: ReactNode[];
 }
 
 /** Figures at the hand, a column for each station; for many stations a row each. */
-export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality }: Props) {
+export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, link }: Props) {
   const samples = stations.map((station) => table.sample(station.site, cursorMs));
   const clock = (station: ChosenStation) =>
     station.timeZone === null ? '' : formatLocal(cursorMs, station.timeZone);
   const doppler = (rateMps: number, otherMps?: number) =>
     formatDoppler(dopplerHz(frequencyMhz, rateMps, otherMps), frequencyMhz).replace(/\s?Hz$/, '');
-  const rows = [
+  const rows: Row[] = [
     { name: 'Azimuth', unit: '°', values: samples.map((at) => formatNumber(at.azimuthDeg, 1)) },
     { name: 'Elevation', unit: '°', values: samples.map((at) => formatNumber(at.elevationDeg, 1)) },
     { name: 'Distance', unit: 'km', values: samples.map((at) => formatNumber(at.rangeKm)) },
     { name: 'Own echo Doppler', unit: 'Hz', values: samples.map((at) => doppler(at.rangeRateMps)) },
   ];
+  if (link?.moonUp) rows.push(...linkRows(link));
   const [first, second] = samples;
   return (
     <>
@@ -111,13 +130,48 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality }
             <strong>
               {formatNumber(pathLossDb(frequencyMhz, first.rangeKm, second.rangeKm), 1)} dB
             </strong>
-            .
+            .{link?.moonUp ? ` ${linkSentence(link)}` : null}
           </span>
         ) : null}
-        <span className="figures__quality">
-          Degradation <QualityChip quality={quality} />
-        </span>
+        {quality && !link ? (
+          <span className="figures__quality">
+            {QUALITY_NAMES[quality.basis]} <QualityChip quality={quality} />
+          </span>
+        ) : null}
       </p>
     </>
   );
+}
+
+/** What each station receives from the other. */
+function linkRows({ directions }: LinkMoment): Row[] {
+  const atEnds = [directions[1], directions[0]];
+  return [
+    {
+      name: 'System noise',
+      unit: 'K',
+      values: atEnds.map((direction) => formatNumber(direction.systemTemperatureK)),
+    },
+    {
+      name: 'Heard at this end',
+      unit: 'dB',
+      values: atEnds.map((direction) => {
+        const quality = qualityOfMargin(direction.marginDb);
+        return (
+          <>
+            <strong>{qualityFigure(quality)}</strong> {quality.step}
+          </>
+        );
+      }),
+    },
+  ];
+}
+
+function linkSentence({ model, polarizationOffsetDeg, contactChance }: LinkMoment): string {
+  const { mode, ways, slotMinutes } = model;
+  const offset =
+    ways[0].meeting.kind === 'fixed'
+      ? ''
+      : `Polarisation offset ${formatNumber(polarizationOffsetDeg)}°. `;
+  return `${offset}Margin over ${mode.label} at ${formatNumber(mode.thresholdDb, 1)} dB in ${REFERENCE_BANDWIDTH_HZ} Hz. Chance of a contact in ${slotMinutes} minutes ${chanceWords(contactChance)}.`;
 }

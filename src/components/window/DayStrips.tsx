@@ -1,4 +1,4 @@
-import { formatClock, formatDay, formatHoursMinutes, formatNumber } from '../../domain/time/format';
+import { formatClock, formatDay, formatHoursMinutes } from '../../domain/time/format';
 import {
   DAY_MS,
   HOUR_MS,
@@ -6,7 +6,7 @@ import {
   overlaps,
   subtractIntervals,
 } from '../../domain/time/interval';
-import type { QualityStep } from '../../domain/window/quality';
+import { qualityFigure, type QualityStep } from '../../domain/window/quality';
 import type { TakenSlot } from '../../domain/window/searchData';
 import type { RasterLayers, RasterStation } from '../chart/rasterView';
 
@@ -62,7 +62,7 @@ export function DayStrips({ stations, layers, taken = [], chosen, onChoose }: Pr
                 <span>{formatHoursMinutes(day.usableMs)} h</span>
                 {day.best ? (
                   <span>
-                    <strong>{formatNumber(day.best.db, 1)}</strong> dB, {day.best.step}
+                    <strong>{qualityFigure(day.best)}</strong> dB, {day.best.step}
                   </span>
                 ) : null}
               </div>
@@ -167,7 +167,14 @@ function Strip({
           )}
         />
       ))}
-      <path className="strip__edge" d={boxes(layers.windows, 3, HEIGHT - 6)} />
+      <path
+        className="strip__edge"
+        d={boxes(
+          layers.windows.filter((_, at) => layers.windowQuality[at]!.step !== 'below'),
+          3,
+          HEIGHT - 6,
+        )}
+      />
       <path className="strip__taken" d={boxes(taken, 1, HEIGHT - 2)} />
     </svg>
   );

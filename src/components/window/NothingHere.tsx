@@ -25,6 +25,10 @@ const STEPS: Record<NextStep, { label: string; ask: (from: WindowQuestion) => Wi
     label: 'Drop the limit of degradation',
     ask: (from) => ({ ...from, maximumDegradationDb: null }),
   },
+  dropMargin: {
+    label: 'Drop the least margin',
+    ask: (from) => ({ ...from, minimumMarginDb: null }),
+  },
   dropSun: {
     label: 'Drop the distance from the Sun',
     ask: (from) => ({ ...from, minimumSunSeparationDeg: null }),

@@ -1,7 +1,7 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
 import { bandById, type BandId } from '../../domain/station/bands';
-import { MODES, type ModeId } from '../../domain/station/modes';
+import { defaultMode, MODES, type ModeId } from '../../domain/station/modes';
 import { formatClock, formatLocalRange, formatUtcRange } from '../../domain/time/format';
 import { MINUTE_MS, type Interval } from '../../domain/time/interval';
 import type { ChosenStation } from '../../domain/window/searchData';
@@ -19,6 +19,8 @@ interface Props {
   onSlot: (slot: Interval) => void;
   stations: ChosenStation[];
   band: BandId;
+  /** Of the question, which the offer begins with. */
+  mode: ModeId | null;
   signedIn: boolean;
   signInHref: string;
   nowMs: number;
@@ -106,13 +108,12 @@ export function OfferPanel(props: Props) {
   );
 }
 
-const DEFAULT_MODES: Partial<Record<BandId, ModeId>> = { '10368': 'q65-60d', '24048': 'q65-60e' };
-
 function OfferForm({
   slot,
   onSlot,
   stations,
   band,
+  mode: asked,
   from,
   partners,
   onOffered,
@@ -122,7 +123,7 @@ function OfferForm({
   const ownStations = stations.filter((station) => station.own && station.id !== null);
   const [station, setStation] = useState(from.id!);
   const [frequency, setFrequency] = useState(centreMhz.toFixed(3));
-  const [mode, setMode] = useState<ModeId>(DEFAULT_MODES[band] ?? 'q65-60c');
+  const [mode, setMode] = useState<ModeId>(asked ?? defaultMode(band));
   const [words, setWords] = useState('');
   const frequencyMhz = Number(frequency.replace(',', '.'));
   const frequencyProblem =

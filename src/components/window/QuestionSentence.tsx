@@ -1,4 +1,5 @@
 import { BANDS, type BandId } from '../../domain/station/bands';
+import { defaultMode, MODES, type ModeId } from '../../domain/station/modes';
 import { formatDay, formatDuration, formatNumber } from '../../domain/time/format';
 import { MINUTE_MS } from '../../domain/time/interval';
 import {
@@ -19,6 +20,8 @@ interface Props {
   question: WindowQuestion;
   stations: ChosenStation[];
   own: StationChoice[];
+  /** Whether margins are known, so that a limit of them means something. */
+  byMargin: boolean;
   onChange: (question: WindowQuestion) => void;
 }
 
@@ -36,7 +39,7 @@ const ORDINALS = [
 ];
 
 /** What is asked, as one sentence whose values are its fields. */
-export function QuestionSentence({ question, stations, own, onChange }: Props) {
+export function QuestionSentence({ question, stations, own, byMargin, onChange }: Props) {
   const change = (part: Partial<WindowQuestion>) => onChange({ ...question, ...part });
   const setStation = (index: number, token: string) => {
     const tokens = [...question.stations];
@@ -50,11 +53,18 @@ export function QuestionSentence({ question, stations, own, onChange }: Props) {
       stations: question.stations.filter((_, at) => at !== index),
       lowestDeg: question.lowestDeg.filter((_, at) => at !== index),
     });
+  // Whoever has not chosen a mode keeps what is proposed on each band.
+  const setBand = (band: BandId) =>
+    change({
+      band,
+      mode: question.mode === defaultMode(question.band) ? defaultMode(band) : question.mode,
+    });
   const setLow = (index: number, lowestDeg: number | null) =>
     change({ lowestDeg: question.lowestDeg.map((low, at) => (at === index ? lowestDeg : low)) });
   const chosen = stations.flatMap((station) => [station.token, station.callSign]);
   const both = question.stations.length === 2 ? 'both' : 'all';
   const count = question.stations.length;
+  const offersMargin = question.minimumMarginDb === null && byMargin;
 
   return (
     <div className="question">
@@ -88,7 +98,19 @@ export function QuestionSentence({ question, stations, own, onChange }: Props) {
           label="Band"
           value={question.band}
           options={BANDS.map((band) => ({ value: band.id, label: band.label }))}
-          onChange={(band) => change({ band: band as BandId })}
+          onChange={(band) => setBand(band as BandId)}
+        />
+      </span>
+      <span className="question__part">
+        <span>with</span>
+        <PickSelect
+          label="Mode"
+          value={question.mode ?? ''}
+          options={[
+            ...MODES.map((mode) => ({ value: mode.id, label: mode.label })),
+            { value: '', label: 'any mode' },
+          ]}
+          onChange={(mode) => change({ mode: mode === '' ? null : (mode as ModeId) })}
         />
       </span>
       <span className="question__part">
@@ -146,6 +168,21 @@ export function QuestionSentence({ question, stations, own, onChange }: Props) {
           />
         </span>
       )}
+      {question.minimumMarginDb === null ? null : (
+        <span className="question__part">
+          <span>with a margin of at least</span>
+          <NumberPick
+            label="Least margin"
+            unit="dB"
+            value={question.minimumMarginDb}
+            least={-10}
+            most={20}
+            step={0.1}
+            note="Of the weaker direction, over what the mode needs."
+            onChange={(value) => change({ minimumMarginDb: value })}
+          />
+        </span>
+      )}
       {question.minimumSunSeparationDeg === null ? null : (
         <span className="question__part">
           <span>at least</span>
@@ -171,10 +208,22 @@ export function QuestionSentence({ question, stations, own, onChange }: Props) {
             onChoose={(token) => setStation(count, token)}
           />
         ) : null}
-        {question.maximumDegradationDb === null || question.minimumSunSeparationDeg === null ? (
+        {question.maximumDegradationDb === null ||
+        offersMargin ||
+        question.minimumSunSeparationDeg === null ? (
           <ValuePick label="More limits" value="Limit" plain>
             {(close) => (
               <div className="stack">
+                {offersMargin ? (
+                  <Button
+                    onClick={() => {
+                      change({ minimumMarginDb: 0 });
+                      close();
+                    }}
+                  >
+                    Margin at least {formatNumber(0, 1)} dB
+                  </Button>
+                ) : null}
                 {question.maximumDegradationDb === null ? (
                   <Button
                     onClick={() => {

@@ -1,15 +1,21 @@
-import { useMemo, type ReactNode } from 'react';
+import { useMemo, useState, type ReactNode } from 'react';
+import { describe } from '../../domain/link/budget';
 import { bandById } from '../../domain/station/bands';
-import { formatClock, formatDay, formatNumber } from '../../domain/time/format';
+import { formatClock, formatDay } from '../../domain/time/format';
 import { overlaps, type Interval } from '../../domain/time/interval';
 import { moonPhase } from '../../domain/window/moonPhase';
-import { qualityAt } from '../../domain/window/qualityBands';
+import { judgedAt } from '../../domain/window/judge';
+import { linkSheets, type LinkSheets } from '../../domain/window/ledgerSheet';
+import { qualityFigure } from '../../domain/window/quality';
+import { setupOn } from '../../domain/window/searchData';
 import { windowSentence } from '../../domain/window/sentences';
 import { MoonDomes } from '../chart/MoonDomes';
 import { TwinTide } from '../chart/TwinTide';
 import type { Answer } from './answer';
+import { Button } from '../ui/Button';
 import { CursorTable } from './CursorTable';
 import { detailView } from './detailView';
+import { LinkDialog } from './LinkDialog';
 import { useWidth } from './useWidth';
 
 interface Props {
@@ -43,6 +49,21 @@ export function WindowDetail(props: Props) {
   );
   const inView = <T extends Interval>(items: readonly T[]) =>
     items.filter((item) => overlaps(item, view.shown));
+  const { judge } = layers;
+  const [sheets, setSheets] = useState<LinkSheets | null>(null);
+  const moment = useMemo(
+    () => (judge.links.length === 1 ? judge.links[0]!.over(view.table) : null),
+    [judge, view.table],
+  );
+  moment?.compute(cursorMs);
+  const allUp = judge.links.every((link) => link.over(view.table).look(cursorMs));
+  const openLink = () => {
+    const [first, second] = stations.map((station) => setupOn(station, question.band));
+    if (!moment || !first || !second || question.mode === null) return;
+    moment.compute(cursorMs);
+    const { label } = bandById(question.band);
+    setSheets(linkSheets(describe(moment), [first, second], question.mode, label, cursorMs));
+  };
   const sameDay = formatDay(startMs) === formatDay(endMs);
   return (
     <section className="detail" aria-labelledby="detail-title" ref={element}>
@@ -60,7 +81,7 @@ export function WindowDetail(props: Props) {
           <p>{windowSentence(window, degreesOf)}</p>
         </div>
         <p className={`detail__chip chip--${quality.step}`}>
-          <strong>{formatNumber(quality.db, 1)}</strong> dB, {quality.step}
+          <strong>{qualityFigure(quality)}</strong> dB, {quality.step}
         </p>
       </div>
       {width > 0 ? (
@@ -97,8 +118,19 @@ export function WindowDetail(props: Props) {
         stations={stations}
         cursorMs={cursorMs}
         frequencyMhz={bandById(question.band).centreMhz}
-        quality={qualityAt(layers.curve, cursorMs)}
+        quality={allUp ? judgedAt(judge, cursorMs, view.table) : null}
+        link={moment}
       />
+      {moment ? (
+        <div>
+          <Button look="bare" icon="arrowLeftRight" onClick={openLink}>
+            Link in both directions at {formatClock(cursorMs)}
+          </Button>
+          <LinkDialog sheets={sheets} onClose={() => setSheets(null)} />
+        </div>
+      ) : (
+        <p className="label">{judge.sentence}</p>
+      )}
       {props.children}
     </section>
   );

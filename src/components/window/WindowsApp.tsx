@@ -83,7 +83,13 @@ function Windows({ question: firstQuestion, data: firstData, own, nowMs, ...view
 
   return (
     <div className="windows" aria-busy={loading}>
-      <QuestionSentence question={question} stations={stations} own={own} onChange={setQuestion} />
+      <QuestionSentence
+        question={question}
+        stations={stations}
+        own={own}
+        byMargin={layers?.judge.basis === 'margin'}
+        onChange={setQuestion}
+      />
       {problem ? (
         <p className="notice notice--problem" role="alert">
           {problem}
@@ -117,11 +123,18 @@ function Windows({ question: firstQuestion, data: firstData, own, nowMs, ...view
               />
             )}
             <RasterLegend
+              basis={layers.judge.basis}
               callSigns={callSigns}
               hoursKnown={stations.some((station) => station.usable !== undefined)}
               countsHours={question.counting === 'awake'}
               skeds={taken.length > 0}
             />
+            <p className="label">
+              {layers.judge.sentence}
+              {question.minimumMarginDb !== null && layers.judge.basis === 'degradation'
+                ? ' Your least margin does not count meanwhile.'
+                : ''}
+            </p>
             {notes.map((note) => (
               <p key={note} className="label">
                 {note}

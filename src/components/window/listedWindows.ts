@@ -1,9 +1,10 @@
 import type { MoonTable } from '../../domain/ephemeris';
 import { LEAST_DISTANCE_KM, skyAndDegradation } from '../../domain/link';
+import type { LinkMoment } from '../../domain/link/moment';
 import type { LayersCache } from '../../domain/window/layers';
 import { questionSpan } from '../../domain/window/question';
 import { bestFirst } from '../../domain/window/ranking';
-import { whyWords } from '../../domain/window/sentences';
+import { whyWords, type WhyFacts } from '../../domain/window/sentences';
 import type { Answer } from './answer';
 import type { ListedWindow } from './BestFirst';
 
@@ -14,6 +15,8 @@ export function listedWindows(
 ): ListedWindow[] {
   const table = cache.windows.table(questionSpan(question));
   const model = cache.model(question.band);
+  const [link] = layers.judge.links.length === 1 ? layers.judge.links : [];
+  const moment = link?.over(table);
   return bestFirst(layers.windows, layers.windowQuality).map((index) => {
     const window = layers.windows[index]!;
     const atMs = window.best.timeMs;
@@ -24,6 +27,7 @@ export function listedWindows(
       why: whyWords(window, {
         geocentricDistanceKm: km,
         skyLossDb: degradationDb - 40 * Math.log10(km / LEAST_DISTANCE_KM),
+        ...(moment ? lossesAt(moment, atMs) : {}),
         taken,
         degreesOf,
       }),
@@ -33,6 +37,19 @@ export function listedWindows(
       }),
     };
   });
+}
+
+/** What the weaker direction loses beside the path. */
+function lossesAt(
+  moment: LinkMoment,
+  atMs: number,
+): Pick<WhyFacts, 'polarizationLossDb' | 'spreadLossDb'> {
+  moment.compute(atMs);
+  const [there, back] = moment.directions;
+  const { polarizationLossDb, spreadLossDb } = there.marginDb < back.marginDb ? there : back;
+  // Below 500 MHz every hour carries the same 3 dB, which tells hours not apart.
+  const known = moment.model.ways[0].meeting.kind === 'offset';
+  return { polarizationLossDb: known ? polarizationLossDb : 0, spreadLossDb };
 }
 
 function geocentricKm(table: MoonTable, atMs: number): number {

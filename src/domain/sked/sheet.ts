@@ -2,7 +2,9 @@ import { buildMoonTable, moonSamples, moonTrack, type TrackPoint } from '../ephe
 import { degradationModel, dopplerHz, skyAndDegradation } from '../link';
 import { HOUR_MS, MINUTE_MS, type Interval } from '../time/interval';
 import { commonMoonUp, findCommonWindows, WindowCache, type CommonWindow } from '../window';
-import { qualityBands, qualityCurve, type QualityBand } from '../window/qualityBands';
+import { judgedAt, judgedCurve, type Judge } from '../window/judge';
+import type { Quality } from '../window/quality';
+import { bestMoment, qualityBands, type QualityBand } from '../window/qualityBands';
 import type { SkedStation } from './obstacle';
 
 /** One line of the track table. */
@@ -13,6 +15,8 @@ export interface TrackRow {
   /** Between the two stations; null where there are more. */
   mutualHz: number | null;
   degradationDb: number;
+  /** By what the sked is judged. */
+  quality: Quality;
 }
 
 /** What surrounds the slot, for the twin tide. */
@@ -26,6 +30,8 @@ export interface SkedSheet {
   rows: TrackRow[];
   /** The common window that holds most of the slot, by the sky alone; null where there is none. */
   window: CommonWindow | null;
+  /** The best moment of that window. */
+  best: { timeMs: number; quality: Quality } | null;
   tide: SkedTide;
 }
 
@@ -37,8 +43,9 @@ const TIDE_LONGEST_MS = 16 * HOUR_MS;
 export function skedSheet(
   stations: readonly SkedStation[],
   slot: Interval,
-  frequencyMhz: number,
+  judge: Judge,
 ): SkedSheet {
+  const { frequencyMhz } = judge;
   const cache = new WindowCache();
   const search = {
     startMs: slot.startMs - LOOK_AROUND_MS,
@@ -52,10 +59,11 @@ export function skedSheet(
     return shared > 0 && (!best || shared > sharedMs(best, slot)) ? one : best;
   }, null);
   return {
-    rows: trackRows(stations, slot, frequencyMhz),
+    rows: trackRows(stations, slot, judge),
     window,
+    best: window && bestMoment(judgedCurve(judge, cache.table(search)), window),
     tide: {
-      ...tideOf(stations, tideSpan(slot, window), frequencyMhz, windows),
+      ...tideOf(stations, tideSpan(slot, window), judge, windows),
       hidden: commonMoonUp(search, cache).hidden.map(({ startMs, endMs }) => ({ startMs, endMs })),
     },
   };
@@ -65,8 +73,9 @@ export function skedSheet(
 export function trackRows(
   stations: readonly SkedStation[],
   slot: Interval,
-  frequencyMhz: number,
+  judge: Judge,
 ): TrackRow[] {
+  const { frequencyMhz } = judge;
   const lengthMs = slot.endMs - slot.startMs;
   const stepMs =
     [5, 10, 30].map((minutes) => minutes * MINUTE_MS).find((step) => lengthMs <= 18 * step) ??
@@ -76,6 +85,7 @@ export function trackRows(
   times.push(slot.endMs);
   const samples = stations.map((station) => moonSamples(station.site, times));
   const model = degradationModel(frequencyMhz);
+  const table = buildMoonTable(slot);
   return times.map((timeMs, index) => {
     const here = samples.map((track) => track[index]!);
     return {
@@ -91,6 +101,7 @@ export function trackRows(
           ? dopplerHz(frequencyMhz, here[0]!.rangeRateMps, here[1]!.rangeRateMps)
           : null,
       degradationDb: skyAndDegradation(model, timeMs).degradationDb,
+      quality: judgedAt(judge, timeMs, table),
     };
   });
 }
@@ -114,18 +125,16 @@ function tideSpan(slot: Interval, window: Interval | null): Interval {
 function tideOf(
   stations: readonly SkedStation[],
   span: Interval,
-  frequencyMhz: number,
+  judge: Judge,
   windows: readonly Interval[],
 ): Omit<SkedTide, 'hidden'> {
   const table = buildMoonTable(span);
-  const model = degradationModel(frequencyMhz);
-  const curve = qualityCurve(span, (timeMs) => skyAndDegradation(model, timeMs).degradationDb);
   return {
     ...span,
     stations: stations.map(({ callSign, site }) => ({
       callSign,
       points: moonTrack(table, site, span, 10 * MINUTE_MS),
     })),
-    bands: qualityBands(curve, windows),
+    bands: qualityBands(judgedCurve(judge, table), windows),
   };
 }

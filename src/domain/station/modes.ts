@@ -1,3 +1,5 @@
+import type { BandId } from './bands';
+
 /** Modes in which a sked can be worked. Thresholds, periods and tone spacings: domain/link/modes.ts. */
 export const MODES = [
   { id: 'cw', label: 'CW' },
@@ -29,6 +31,13 @@ export const MODES = [
 export type ModeId = (typeof MODES)[number]['id'];
 
 export const MODE_IDS = MODES.map((mode) => mode.id) as [ModeId, ...ModeId[]];
+
+const DEFAULT_MODES: Partial<Record<BandId, ModeId>> = { '10368': 'q65-60d', '24048': 'q65-60e' };
+
+/** What is proposed on a band until somebody chooses. */
+export function defaultMode(band: BandId): ModeId {
+  return DEFAULT_MODES[band] ?? 'q65-60c';
+}
 
 export function modeById(id: ModeId): (typeof MODES)[number] {
   return MODES.find((mode) => mode.id === id)!;

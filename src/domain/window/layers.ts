@@ -1,19 +1,21 @@
-import { degradationModel, skyAndDegradation, type DegradationModel } from '../link';
+import { degradationModel, type DegradationModel } from '../link';
 import { bandById, type BandId } from '../station/bands';
 import { DAY_MS, intersectIntervals, subtractIntervals, type Interval } from '../time/interval';
 import { WindowCache } from './cache';
 import { findCommonWindows } from './findCommonWindows';
+import type { InnerLimit } from './innerLimit';
+import { judgedCurve, judgeOf, type Judge } from './judge';
 import { moonPhase, type MoonPhase } from './moonPhase';
-import { qualityOfDegradation, type Quality } from './quality';
+import { qualityOfDegradation, worthDb, type Quality } from './quality';
 import {
-  qualityAt,
+  bestMoment,
+  figureAt,
   qualityBands,
-  qualityCurve,
   type QualityBand,
   type QualityCurve,
 } from './qualityBands';
 import { questionSpan, type WindowQuestion } from './question';
-import type { ChosenStation } from './searchData';
+import { setupOn, type ChosenStation } from './searchData';
 import { freeIntervals } from './timeline';
 import type { CommonWindow, WindowResult, WindowSearch, WindowStation } from './types';
 
@@ -38,6 +40,7 @@ export interface WindowLayers extends WindowResult {
   /** The Moon at noon UTC of each day; the same array as long as the dates stay. */
   phases: MoonPhase[];
   curve: QualityCurve;
+  judge: Judge;
 }
 
 const KEPT = 8;
@@ -47,6 +50,9 @@ export class LayersCache {
   readonly windows = new WindowCache();
   readonly #models = new Map<BandId, DegradationModel>();
   readonly #curves = new Map<string, QualityCurve>();
+  readonly #judges = new Map<string, Judge>();
+  readonly #names = new WeakMap<Judge, string>();
+  #named = 0;
   readonly #phases = new Map<string, MoonPhase[]>();
 
   model(band: BandId): DegradationModel {
@@ -55,20 +61,38 @@ export class LayersCache {
     return model;
   }
 
-  curve(span: Interval, band: BandId): QualityCurve {
-    const key = `${span.startMs}/${span.endMs} ${band}`;
+  /** By what a question is judged; the same object as long as stations, band and mode stay. */
+  judge({ band, mode }: WindowQuestion, stations: readonly ChosenStation[]): Judge {
+    const judged = stations.map((station) => ({
+      callSign: station.callSign,
+      site: station.site,
+      setup: setupOn(station, band),
+    }));
+    const key = JSON.stringify([band, mode, judged]);
+    const known = this.#judges.get(key);
+    if (known) return known;
+    const judge = judgeOf(judged, bandById(band).centreMhz, mode);
+    if (this.#judges.size >= KEPT) this.#judges.clear();
+    this.#judges.set(key, judge);
+    return judge;
+  }
+
+  curve(span: Interval, judge: Judge): QualityCurve {
+    // Every degradation of a frequency is the same; a margin belongs to its stations.
+    const whose = judge.basis === 'margin' ? this.#nameOf(judge) : judge.frequencyMhz;
+    const key = `${span.startMs}/${span.endMs} ${whose}`;
     const known = this.#curves.get(key);
     if (known) return known;
-    const table = this.windows.table(span);
-    const model = this.model(band);
-    const moon = new Float64Array(3);
-    const curve = qualityCurve(span, (timeMs) => {
-      table.moonNearlyOfDate(timeMs, moon);
-      return skyAndDegradation(model, timeMs, moon).degradationDb;
-    });
-    if (this.#curves.size > KEPT) this.#curves.clear();
+    const curve = judgedCurve(judge, this.windows.table(span));
+    if (this.#curves.size >= KEPT) this.#curves.clear();
     this.#curves.set(key, curve);
     return curve;
+  }
+
+  #nameOf(judge: Judge): string {
+    const name = this.#names.get(judge) ?? `judge ${(this.#named += 1)}`;
+    this.#names.set(judge, name);
+    return name;
   }
 
   phases(span: Interval): MoonPhase[] {
@@ -124,26 +148,52 @@ export function windowLayers(
 ): WindowLayers {
   const search = searchOf(question, stations);
   const span = questionSpan(question);
-  const result = findCommonWindows(search, cache.windows);
-  const curve = cache.curve(span, question.band);
+  const judge = cache.judge(question, stations);
+  const curve = cache.curve(span, judge);
+  const { windows: found, lost } = findCommonWindows(
+    search,
+    cache.windows,
+    marginLimit(question, judge, curve),
+  );
+  const best = found.map((window) => bestMoment(curve, window));
+  const windows: CommonWindow[] =
+    judge.basis === 'degradation'
+      ? found
+      : found.map((window, index) => ({ ...window, best: { timeMs: best[index]!.timeMs } }));
   const clear = common(search.stations.map((station) => visible(station, span, cache)));
   const up = common(
     search.stations.map((station) => visible({ ...station, sky: {} }, span, cache)),
   );
   return {
-    ...result,
-    windowQuality: result.windows.map((window) =>
-      window.best.degradationDb === undefined
-        ? qualityAt(curve, window.best.timeMs)
-        : qualityOfDegradation(window.best.degradationDb),
+    windows,
+    lost,
+    windowQuality: windows.map(({ best: { degradationDb } }, index) =>
+      degradationDb === undefined ? best[index]!.quality : qualityOfDegradation(degradationDb),
     ),
-    bands: qualityBands(curve, result.windows),
-    outside: qualityBands(curve, subtractIntervals(clear, result.windows)),
+    bands: qualityBands(curve, windows),
+    outside: qualityBands(curve, subtractIntervals(clear, windows)),
     hidden: subtractIntervals(up, clear),
-    days: rasterDays(question, result.windows, curve),
+    days: rasterDays(question, windows, curve),
     phases: cache.phases(span),
     curve,
+    judge,
   };
+}
+
+/** The least margin as a limit read off the curve, so that edges lie where the shade changes. */
+function marginLimit(
+  { minimumMarginDb }: WindowQuestion,
+  { basis }: Judge,
+  curve: QualityCurve,
+): InnerLimit[] {
+  if (minimumMarginDb === null || basis !== 'margin') return [];
+  return [
+    {
+      cause: { callSign: null, reason: 'margin' },
+      stepMs: curve.stepMs,
+      evaluate: (timeMs) => figureAt(curve, timeMs) - minimumMarginDb,
+    },
+  ];
 }
 
 function visible(station: WindowStation, span: Interval, cache: LayersCache): Interval[] {
@@ -170,16 +220,11 @@ function rasterDays(
   });
 }
 
-const LOOK_MS = 10 * 60_000;
-
 function bestOf(curve: QualityCurve, pieces: readonly Interval[]): Quality | null {
   let best: Quality | null = null;
   for (const piece of pieces) {
-    for (let at = piece.startMs; ; at = Math.min(at + LOOK_MS, piece.endMs)) {
-      const quality = qualityAt(curve, at);
-      if (!best || quality.db > best.db) best = quality;
-      if (at >= piece.endMs) break;
-    }
+    const { quality } = bestMoment(curve, piece);
+    if (!best || worthDb(quality) > worthDb(best)) best = quality;
   }
   return best;
 }

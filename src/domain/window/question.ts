@@ -1,4 +1,5 @@
 import { BAND_IDS, type BandId } from '../station/bands';
+import { defaultMode, MODE_IDS, type ModeId } from '../station/modes';
 import { DAY_MS, type Interval } from '../time/interval';
 
 export const MOST_STATIONS = 16;
@@ -10,6 +11,8 @@ export interface WindowQuestion {
   /** Ids of listed stations, or places: a locator, with a time zone as "JO97ee@Europe/Stockholm". */
   stations: string[];
   band: BandId;
+  /** Margins are computed for it; null judges by degradation. */
+  mode: ModeId | null;
   /** Midnight UTC of the first day. */
   fromMs: number;
   days: number;
@@ -17,6 +20,8 @@ export interface WindowQuestion {
   lowestDeg: (number | null)[];
   minimumMinutes: number;
   maximumDegradationDb: number | null;
+  /** Of the weaker direction; counts only while windows are judged by margin. */
+  minimumMarginDb: number | null;
   minimumSunSeparationDeg: number | null;
   /** `awake`: only hours usable for everyone. `any`: all hours. */
   counting: 'awake' | 'any';
@@ -31,6 +36,8 @@ export interface QuestionProblem {
 export const DEFAULT_MINIMUM_MINUTES = 30;
 const DEFAULT_DAYS = 30;
 const DEFAULT_BAND: BandId = '1296';
+/** What stands in an address for a question without a mode. */
+const NO_MODE = 'none';
 
 export function startOfUtcDay(atMs: number): number {
   return Math.floor(atMs / DAY_MS) * DAY_MS;
@@ -49,11 +56,13 @@ export function emptyQuestion(nowMs: number): WindowQuestion {
   return {
     stations: [],
     band: DEFAULT_BAND,
+    mode: defaultMode(DEFAULT_BAND),
     fromMs: startOfUtcDay(nowMs),
     days: DEFAULT_DAYS,
     lowestDeg: [],
     minimumMinutes: DEFAULT_MINIMUM_MINUTES,
     maximumDegradationDb: null,
+    minimumMarginDb: null,
     minimumSunSeparationDeg: null,
     counting: 'awake',
   };
@@ -99,6 +108,14 @@ export function parseQuestion(
     if (known) question.band = known;
     else complain('band', `“${band.slice(0, 20)}” is not a band here. Choose one from the list.`);
   }
+  question.mode = defaultMode(question.band);
+  const mode = params.get('mode')?.trim().toLowerCase();
+  if (mode === NO_MODE) question.mode = null;
+  else if (mode) {
+    const known = MODE_IDS.find((id) => id === mode);
+    if (known) question.mode = known;
+    else complain('mode', `“${mode.slice(0, 20)}” is not a mode here. Choose one from the list.`);
+  }
   const from = params.get('from')?.trim();
   if (from) {
     const fromMs = readDate(from);
@@ -120,6 +137,9 @@ export function parseQuestion(
   question.maximumDegradationDb = readNumber(params.get('loss') ?? undefined, 0, 30, (sentence) =>
     complain('loss', `Largest degradation in dB: ${sentence}`),
   );
+  question.minimumMarginDb = readNumber(params.get('margin') ?? undefined, -20, 40, (sentence) =>
+    complain('margin', `Least margin in dB: ${sentence}`),
+  );
   question.minimumSunSeparationDeg = readNumber(params.get('sun') ?? undefined, 0, 90, (sentence) =>
     complain('sun', `Least distance from the Sun in degrees: ${sentence}`),
   );
@@ -132,6 +152,7 @@ export function questionParams(question: WindowQuestion): URLSearchParams {
   const params = new URLSearchParams();
   for (const station of question.stations) params.append('station', station);
   params.set('band', question.band);
+  if (question.mode !== defaultMode(question.band)) params.set('mode', question.mode ?? NO_MODE);
   params.set('from', utcDate(question.fromMs));
   params.set('days', String(question.days));
   if (question.lowestDeg.some((low) => low !== null)) {
@@ -146,6 +167,7 @@ export function questionParams(question: WindowQuestion): URLSearchParams {
   if (question.maximumDegradationDb !== null) {
     params.set('loss', String(question.maximumDegradationDb));
   }
+  if (question.minimumMarginDb !== null) params.set('margin', String(question.minimumMarginDb));
   if (question.minimumSunSeparationDeg !== null) {
     params.set('sun', String(question.minimumSunSeparationDeg));
   }

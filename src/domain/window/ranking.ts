@@ -1,5 +1,5 @@
 import { HOUR_MS } from '../time/interval';
-import type { Quality } from './quality';
+import { QUALITY_NAMES, worthDb, type Quality, type QualityBasis } from './quality';
 import type { CommonWindow } from './types';
 
 /** Twice the length weighs as much as this, up to the longest length that counts. */
@@ -7,12 +7,13 @@ const DB_PER_DOUBLING = 0.5;
 const LONGEST_COUNTED_HOURS = 4;
 
 /** How windows are ranked, for people. */
-export const RANKING_SENTENCE =
-  'Ranked by degradation at the best moment and length: twice the length counts as 0.5 dB, up to 4 hours.';
+export function rankingSentence(basis: QualityBasis): string {
+  return `Ranked by ${QUALITY_NAMES[basis].toLowerCase()} at the best moment and length: twice the length counts as 0.5 dB, up to 4 hours.`;
+}
 
 export function windowScore(window: CommonWindow, quality: Quality): number {
   const hours = (window.endMs - window.startMs) / HOUR_MS;
-  return quality.db + DB_PER_DOUBLING * Math.log2(Math.min(hours, LONGEST_COUNTED_HOURS));
+  return worthDb(quality) + DB_PER_DOUBLING * Math.log2(Math.min(hours, LONGEST_COUNTED_HOURS));
 }
 
 /** Indices of the windows, best first; equal ones in order of time. */

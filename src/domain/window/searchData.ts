@@ -1,4 +1,7 @@
 import type { SkedState } from '../sked/types';
+import type { BandId } from '../station/bands';
+import type { BandSetup } from '../station/setup';
+import type { BandEquipment } from '../station/views';
 import type { Interval } from '../time/interval';
 import type { WindowStation } from './types';
 
@@ -13,8 +16,15 @@ export interface ChosenStation extends WindowStation {
   locator: string;
   /** Null where only a locator was given. */
   timeZone: string | null;
+  /** Every band, as on its public page; empty for a bare place. */
+  equipment: BandEquipment[];
   /** Whether the viewer belongs to its crew. */
   own: boolean;
+}
+
+/** The station's equipment on a band, or null. */
+export function setupOn(station: Pick<ChosenStation, 'equipment'>, band: BandId): BandSetup | null {
+  return station.equipment.find((one) => one.band === band)?.setup ?? null;
 }
 
 /** A station that can be chosen from the list. */

@@ -1,7 +1,6 @@
 import { formatClock, formatDay, formatDuration, formatNumber } from '../time/format';
 import { DAY_MS, HOUR_MS, intersectIntervals, overlaps, type Interval } from '../time/interval';
 import type { WindowLayers } from './layers';
-import type { Quality } from './quality';
 import type { TakenSlot } from './searchData';
 import type { CommonWindow, LimitCause, LostHours } from './types';
 
@@ -51,6 +50,9 @@ export interface WhyFacts {
   geocentricDistanceKm: number;
   /** What the sky adds to the degradation, dB. */
   skyLossDb: number;
+  /** What the link loses beside the path, where it is known: of the weaker direction, dB. */
+  polarizationLossDb?: number | undefined;
+  spreadLossDb?: number | undefined;
   taken: readonly TakenSlot[];
   degreesOf?: LimitDegrees | undefined;
 }
@@ -66,6 +68,8 @@ export function whyWords(window: CommonWindow, facts: WhyFacts): string {
   if (skyLossDb < 0.15) words.push('cold sky');
   else if (skyLossDb > 2.5) words.push('the Milky Way behind it');
   else if (skyLossDb > 1) words.push('warm sky');
+  if ((facts.polarizationLossDb ?? 0) > 2) words.push('polarisations crossed');
+  if ((facts.spreadLossDb ?? 0) > 1) words.push('echo spread wide');
 
   const lowest = [...window.stations].sort(
     (a, b) => a.maximumElevationDeg - b.maximumElevationDeg,
@@ -203,7 +207,7 @@ export function lostWords(lost: LostHours, degreesOf: LimitDegrees = () => null)
 
 /** What would help when nothing was found, in the order in which it is offered. */
 export type NextStep =
-  'countAny' | 'shorter' | 'dropDegradation' | 'dropSun' | 'lower' | 'otherDates';
+  'countAny' | 'shorter' | 'dropDegradation' | 'dropMargin' | 'dropSun' | 'lower' | 'otherDates';
 
 export interface NothingFound {
   title: string;
@@ -246,6 +250,10 @@ export function nothingFound(layers: WindowLayers, lowered: boolean): NothingFou
     steps.push('dropDegradation');
     reasons.push('with more degradation than you allow');
   }
+  if (lostMs('margin') > 0) {
+    steps.push('dropMargin');
+    reasons.push('with less margin than you ask for');
+  }
   if (lostMs('sunSeparation') > 0) {
     steps.push('dropSun');
     reasons.push('too near the Sun');
@@ -265,9 +273,4 @@ export function nothingFound(layers: WindowLayers, lowered: boolean): NothingFou
 export function listWords(words: readonly string[], between = 'and'): string {
   if (words.length < 2) return words.join('');
   return `${words.slice(0, -1).join(', ')} ${between} ${words.at(-1)}`;
-}
-
-/** "−1.2 dB, strong" */
-export function qualityWords(quality: Quality): string {
-  return `${formatNumber(quality.db, 1)} dB, ${quality.step}`;
 }

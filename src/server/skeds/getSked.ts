@@ -4,7 +4,9 @@ import type { SkedChoices, SkedReportView, SkedView } from '../../domain/sked/vi
 import type { Viewer } from '../auth/viewer';
 import type { Db } from '../db/connection';
 import type { Services } from '../services';
+import type { JudgedStation } from '../../domain/window/judge';
 import { eventsOf } from './events';
+import { judgedParties } from './judgedParties';
 import { loadSked, stationIdsOf, type PartyStation } from './load';
 import { noSuchSked } from './refusals';
 import { slotWarnings } from './slotCheck';
@@ -18,7 +20,13 @@ export async function getSked(
   { db, now }: Services,
   viewer: Viewer,
   skedId: string,
-): Promise<{ view: SkedView; stations: PartyStation[]; warnings: string[] }> {
+): Promise<{
+  view: SkedView;
+  stations: PartyStation[];
+  /** The same with their equipment on the band: parties see each other's, and it is on the public pages too. */
+  judged: JudgedStation[];
+  warnings: string[];
+}> {
   const loaded = await loadSked(db, skedId);
   const mine = await stationIdsOf(db, viewer.id);
   const own = (loaded?.sked.parties ?? [])
@@ -27,10 +35,12 @@ export async function getSked(
   if (!loaded || own.length === 0) throw noSuchSked();
   const nowMs = now();
   const [summary] = await summariesOf(db, [loaded.row], mine, nowMs);
+  const stations = summary!.parties.map((party) =>
+    loaded.stations.find((station) => station.id === party.stationId)!,
+  );
   return {
-    stations: summary!.parties.map((party) =>
-      loaded.stations.find((station) => station.id === party.stationId)!,
-    ),
+    stations,
+    judged: await judgedParties(db, stations, loaded.row.band),
     warnings:
       summary!.state === 'offered'
         ? await slotWarnings(db, loaded.stations, loaded.sked, skedId)

@@ -2,8 +2,9 @@ import type { MoveChoice } from '../../domain/sked/moveChoice';
 import { nearestSlots } from '../../domain/sked/nearestSlots';
 import { DAY_MS, MINUTE_MS, subtractIntervals, type Interval } from '../../domain/time/interval';
 import { expandUsableHours } from '../../domain/time/weeklyHours';
-import { findCommonWindows } from '../../domain/window';
-import { qualityOfDegradation } from '../../domain/window/quality';
+import { findCommonWindows, WindowCache } from '../../domain/window';
+import { judgedCurve, type Judge } from '../../domain/window/judge';
+import { bestMoment } from '../../domain/window/qualityBands';
 import type { Services } from '../services';
 import type { PartyStation } from './load';
 import { takenIntervals } from './takenIntervals';
@@ -19,11 +20,13 @@ export async function moveChoices(
   services: Services,
   stations: readonly PartyStation[],
   sked: Interval & { id: string; frequencyMhz: number },
+  judge: Judge,
 ): Promise<MoveChoice[]> {
   const startMs = services.now() + 10 * MINUTE_MS;
   const span = { startMs, endMs: startMs + DAYS * DAY_MS };
   const lengthMs = sked.endMs - sked.startMs;
-  const { windows } = findCommonWindows({
+  const cache = new WindowCache();
+  const search = {
     ...span,
     stations: stations.map(({ callSign, site, sky, hours }) => ({
       callSign,
@@ -33,12 +36,15 @@ export async function moveChoices(
     })),
     frequencyMhz: sked.frequencyMhz,
     minimumMinutes: lengthMs / MINUTE_MS,
-  });
+  };
+  const { windows } = findCommonWindows(search, cache);
+  const curve = judgedCurve(judge, cache.table(span));
   const ids = stations.map((station) => station.id);
   const taken = await takenIntervals(services.db, ids, span, sked.id);
   return windows
     .flatMap((window) => {
-      const bestMs = window.best.timeMs - lengthMs / 2;
+      const best = bestMoment(curve, window);
+      const bestMs = best.timeMs - lengthMs / 2;
       const free = subtractIntervals([window], taken);
       const [slot] = nearestSlots(free, { startMs: bestMs, endMs: bestMs + lengthMs }, 1);
       if (!slot) return [];
@@ -46,7 +52,7 @@ export async function moveChoices(
         {
           window: { startMs: window.startMs, endMs: window.endMs },
           slot,
-          quality: qualityOfDegradation(window.best.degradationDb ?? 0),
+          quality: best.quality,
         },
       ];
     })

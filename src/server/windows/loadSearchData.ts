@@ -19,7 +19,7 @@ export interface LoadedSearchData extends SearchData {
 /**
  * What a question's stations are: listed ones by id or call sign, bare places by locator. What cannot be found is
  * left out and told in `problems`. Positions are as the viewer may know them, and the sky of others is coarse for
- * visitors, because all of it goes to the browser.
+ * visitors, because all of it goes to the browser. Equipment is that of the public page of each station.
  */
 export async function loadSearchData(
   services: Services,
@@ -99,7 +99,7 @@ async function listedStation(
 ): Promise<ChosenStation | string> {
   try {
     const [station] = await stationsForSearch(services.db, viewer, [id], span, 'viewer');
-    const { callSign, site, sky, usable, name, locator, timeZone, own } = station!;
+    const { callSign, site, sky, usable, name, locator, timeZone, equipment, own } = station!;
     return {
       token,
       id,
@@ -110,6 +110,7 @@ async function listedStation(
       placeName: name.trim() === '' ? null : name,
       locator,
       timeZone,
+      equipment,
       own,
     };
   } catch (error) {
@@ -138,6 +139,7 @@ function placeStation(token: string): ChosenStation | string {
     placeName: null,
     locator,
     timeZone: zone ?? null,
+    equipment: [],
     own: false,
   };
 }

@@ -31,6 +31,7 @@ function station(callSign: string, latitudeDeg: number, longitudeDeg: number): C
     placeName: null,
     locator: 'JO00',
     timeZone: 'UTC',
+    equipment: [],
     own: false,
   };
 }
@@ -133,21 +134,22 @@ describe('quality', () => {
   ])('of %f dB of degradation is %s', (degradationDb, step) => {
     const quality = qualityOfDegradation(degradationDb);
     expect(quality.step).toBe(step);
-    expect(quality.db).toBeCloseTo(-degradationDb, 12);
+    expect(quality).toMatchObject({ basis: 'degradation', db: degradationDb });
   });
 
   it('changes bands where a straight line crosses a step', () => {
     const curve: QualityCurve = {
       ...questionSpan(question),
+      basis: 'degradation',
       stepMs: HOUR_MS,
-      valuesDb: Float64Array.from({ length: 721 }, (_, hour) => -hour / 10),
+      valuesDb: Float64Array.from({ length: 721 }, (_, hour) => hour / 10),
     };
     const bands = qualityBands(curve, [{ startMs: FROM_MS, endMs: FROM_MS + 20 * HOUR_MS }]);
     expect(bands.map((band) => band.step)).toEqual(['ample', 'strong', 'good']);
-    // −0.75 dB is the last that is shown as −0.7.
+    // 0.75 dB is the first that is shown as 0.8.
     expect(Math.abs(bands[1]!.startMs - (FROM_MS + 7.5 * HOUR_MS))).toBeLessThanOrEqual(300_000);
     expect(bands.at(-1)!.endMs).toBe(FROM_MS + 20 * HOUR_MS);
-    expect(qualityAt(curve, FROM_MS + 1.5 * HOUR_MS).db).toBeCloseTo(-0.15, 12);
+    expect(qualityAt(curve, FROM_MS + 1.5 * HOUR_MS).db).toBeCloseTo(0.15, 12);
     expect(qualityAt(curve, FROM_MS - DAY_MS).db).toBeCloseTo(0, 12);
   });
 });

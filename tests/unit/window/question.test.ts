@@ -7,7 +7,7 @@ const parse = (query: string) => parseQuestion(new URLSearchParams(query), NOW_M
 describe('a question in an address', () => {
   it('comes back the same', () => {
     const query =
-      'station=QA1LUN&station=JO97ee%40Europe%2FStockholm&station=QC2FAR&band=144&from=2027-02-01&days=45&low=8&low=&low=12.5&minutes=20&loss=3&sun=15&count=any';
+      'station=QA1LUN&station=JO97ee%40Europe%2FStockholm&station=QC2FAR&band=144&from=2027-02-01&days=45&low=8&low=&low=12.5&minutes=20&loss=3&mode=cw&margin=1.5&sun=15&count=any';
     const { question, problems } = parse(query);
     expect(problems).toEqual([]);
     expect(question).toEqual({
@@ -17,7 +17,9 @@ describe('a question in an address', () => {
       days: 45,
       lowestDeg: [8, null, 12.5],
       minimumMinutes: 20,
+      mode: 'cw',
       maximumDegradationDb: 3,
+      minimumMarginDb: 1.5,
       minimumSunSeparationDeg: 15,
       counting: 'any',
     });
@@ -48,6 +50,8 @@ describe('a question in an address', () => {
     ['minutes=0', 'minutes', '1 to 1440'],
     ['loss=-1', 'loss', '0 to 30'],
     ['sun=NaN', 'sun', 'not a number'],
+    ['mode=q66', 'mode', 'q66'],
+    ['margin=50', 'margin', '\u221220 to 40'],
     ['station=QA1LUN&low=95', 'low', '\u22125 to 89'],
     ['station=QA1LUN&station=QA1LUN', 'station', 'named twice'],
   ])('says what is wrong with %s and keeps its default', (query, field, words) => {

@@ -12,6 +12,8 @@ import {
   whyWords,
   windowSentence,
 } from '~/domain/window/sentences';
+import { judgeOf } from '~/domain/window/judge';
+import { qualityOfDegradation } from '~/domain/window/quality';
 import type { CommonWindow } from '~/domain/window/types';
 
 const FROM_MS = Date.parse('2027-01-18T00:00:00Z');
@@ -47,14 +49,21 @@ function layersOf(windows: CommonWindow[], part: Partial<WindowLayers> = {}): Wi
   });
   return {
     windows,
-    windowQuality: windows.map(() => ({ db: -1, step: 'strong' as const })),
+    windowQuality: windows.map(() => qualityOfDegradation(1)),
     lost: [],
     bands: [],
     outside: [],
     hidden: [],
     days,
     phases: [],
-    curve: { startMs: 0, endMs: 1, stepMs: 1, valuesDb: new Float64Array(2) },
+    curve: {
+      startMs: 0,
+      endMs: 1,
+      basis: 'degradation',
+      stepMs: 1,
+      valuesDb: new Float64Array(2),
+    },
+    judge: judgeOf([], 1296.1, null),
     ...part,
   };
 }
@@ -103,7 +112,7 @@ describe('one window', () => {
 });
 
 describe('ranking', () => {
-  const strong = { db: -1, step: 'strong' as const };
+  const strong = qualityOfDegradation(1);
 
   it('weighs twice the length as half a decibel, up to four hours', () => {
     expect(windowScore(window(0, 2), strong) - windowScore(window(0, 1), strong)).toBeCloseTo(0.5);
@@ -112,7 +121,7 @@ describe('ranking', () => {
 
   it('puts the best first and equal ones in order of time', () => {
     const windows = [window(0, 1), window(24, 1), window(48, 4), window(72, 1)];
-    const quality = [strong, { db: -0.2, step: 'ample' as const }, strong, strong];
+    const quality = [strong, qualityOfDegradation(0.2), strong, strong];
     expect(bestFirst(windows, quality)).toEqual([2, 1, 0, 3]);
   });
 });

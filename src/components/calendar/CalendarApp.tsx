@@ -36,6 +36,9 @@ const VIEWS = [
 ] as const;
 type ViewId = (typeof VIEWS)[number]['id'];
 
+/** A shorter sked has room for one line. */
+const TWO_LINES_MS = 45 * MINUTE_MS;
+
 export function CalendarApp(props: Props) {
   const [client] = useState(
     () => new QueryClient({ defaultOptions: { queries: { staleTime: 60_000, retry: 1 } } }),
@@ -202,9 +205,11 @@ function Calendar({ timeZone, nowMs, grounds }: Props) {
                   <strong>{partnersOf(sked.parties)}</strong> {formatClock(sked.startMs, zone)}–
                   {formatClock(sked.endMs, zone)}
                 </span>
-                <span>
-                  {bandById(sked.band).label}, {stateWords(sked)}
-                </span>
+                {sked.endMs - sked.startMs >= TWO_LINES_MS ? (
+                  <span>
+                    {bandById(sked.band).label}, {stateWords(sked)}
+                  </span>
+                ) : null}
               </>
             );
           }}

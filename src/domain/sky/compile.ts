@@ -111,6 +111,29 @@ export function compileSky(limits: SkyLimits, refraction = false): CompiledSky {
   };
 }
 
+/**
+ * Sines of the lowest and highest elevation of a sky that nothing else limits, the same as `compileSky` would hold
+ * them; null where azimuths, sectors or a profile matter.
+ */
+export function elevationsOnly(
+  limits: SkyLimits,
+  refraction = false,
+): { floorSin: number; highSin: number } | null {
+  const { elevationFromDeg: from, elevationToDeg: to, transmitElevationFromDeg: transmit } = limits;
+  const azimuths = limits.azimuthFromDeg !== undefined && limits.azimuthToDeg !== undefined;
+  if (azimuths || limits.blocked?.length || limits.horizon?.length) return null;
+  const geometric = from === undefined ? 0 : from;
+  const floorDeg = Math.max(geometric, transmit ?? geometric);
+  return {
+    floorSin: limitSine(floorDeg, refraction),
+    highSin: to === undefined ? 2 : limitSine(to, refraction),
+  };
+}
+
+function limitSine(elevationDeg: number, refraction: boolean): number {
+  return Math.sin((refraction ? unrefracted(elevationDeg) : elevationDeg) * DEG);
+}
+
 function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
   return {
     from: azimuthBoundary(fromDeg),

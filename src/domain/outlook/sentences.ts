@@ -30,7 +30,8 @@ function distanceWords({ at, saturday, sunday }: Weekend, days: readonly Outlook
     const [before, here, after] = [days[day - 1], days[day], days[day + 1]];
     if (!before || !here || !after) continue;
     const { distanceKm } = here;
-    if (distanceKm <= before.distanceKm && distanceKm < after.distanceKm) return 'Moon near perigee';
+    if (distanceKm <= before.distanceKm && distanceKm < after.distanceKm)
+      return 'Moon near perigee';
     if (distanceKm >= before.distanceKm && distanceKm > after.distanceKm) return 'Moon near apogee';
   }
   const meanKm = (saturday.distanceKm + sunday.distanceKm) / 2;

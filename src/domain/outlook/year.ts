@@ -1,4 +1,4 @@
-import { MoonTable, buildMoonTable } from '../ephemeris/table';
+import { buildMoonTable, type MoonTable } from '../ephemeris/table';
 import { DEG } from '../ephemeris/constants';
 import { degradationModel, skyAndDegradation, type DegradationModel } from '../link/degradation';
 import { DAY_MS, HOUR_MS, type Interval } from '../time/interval';
@@ -74,17 +74,13 @@ function commonHours({ here, there, days }: OutlookSearch, span: Interval): Floa
   let pairs = 0;
   forEachPair(seen, 1, (first, second, { beginsMs, endsMs, from, to }) => {
     if (first >= here.length || second < here.length) return;
-    if (samePlace(here[first]!, there[second - here.length]!)) return;
+    if (here[first]!.callSign === there[second - here.length]!.callSign) return;
     pairs += 1;
     for (let index = from; index < to; index += 1) {
       addHours(hours, span.startMs, beginsMs[index]!, endsMs[index]!);
     }
   });
   return hours.map((sum) => (pairs === 0 ? 0 : sum / pairs));
-}
-
-function samePlace({ site: a }: WindowStation, { site: b }: WindowStation): boolean {
-  return a.latitudeDeg === b.latitudeDeg && a.longitudeDeg === b.longitudeDeg;
 }
 
 function addHours(hours: Float64Array, startMs: number, beginMs: number, endMs: number): void {

@@ -29,7 +29,7 @@ function everyPair(
   const all = allPairWindows(seenTimes(span, stations), minimumMinutes);
   const { firsts, beginsAfterMs, endsAfterMs } = all;
   return Array.from({ length: firsts.length - 1 }, (_, pair) =>
-    Array.from(beginsAfterMs.subarray(firsts[pair]!, firsts[pair + 1]!), (afterMs, index) => ({
+    Array.from(beginsAfterMs.subarray(firsts[pair], firsts[pair + 1]), (afterMs, index) => ({
       startMs: all.startMs + afterMs,
       endMs: all.startMs + endsAfterMs[firsts[pair]! + index]!,
     })),

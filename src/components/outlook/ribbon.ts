@@ -8,6 +8,8 @@ export interface RibbonFrame {
   /** Room for names left of the strips; 0 puts them above. */
   gutter: number;
   stripHeight: number;
+  /** Upper end of the hours, the same for ribbons that are compared. */
+  mostHours: number;
 }
 
 export interface Strip {
@@ -50,7 +52,7 @@ export function ribbonOf(
   best: readonly Weekend[],
   frame: RibbonFrame,
 ): Ribbon {
-  const { width, gutter, stripHeight } = frame;
+  const { width, gutter, stripHeight, mostHours } = frame;
   const step = (width - gutter) / days.length;
   const x = (day: number) => round(gutter + day * step);
   const named = gutter === 0 ? 20 : 16;
@@ -94,8 +96,8 @@ export function ribbonOf(
     strip(
       'Common hours a day',
       days.map(({ commonHours }) => commonHours),
-      [0, hoursTop(days)],
-      [`${hoursTop(days)} h`, '0'],
+      [0, mostHours],
+      [`${mostHours} h`, '0'],
     ),
   ];
   const axisY = top - named + 8;

@@ -108,7 +108,7 @@ function leastLength(minimumMinutes: number): number {
   return Math.max(Math.round(minimumMinutes * MINUTE_MS), 1);
 }
 
-/** Two lists of a and b stretches have at most a + b − 1 in common; one place more is written to and given up. */
+/** Two lists of a and b stretches have fewer than a + b in common; one place more may be written to and given up. */
 function mostWindows({ stations, firsts }: SeenTimes): number {
   return firsts[stations]! * Math.max(stations - 1, 0) + 1;
 }

@@ -8,7 +8,12 @@ import {
   pairCount,
   pairIndex,
 } from '~/domain/window/allPairs';
-import { WindowCache, findCommonWindows, type WindowStation } from '~/domain/window';
+import {
+  WindowCache,
+  findCommonWindows,
+  visibleIntervals,
+  type WindowStation,
+} from '~/domain/window';
 import { seenTimes } from '~/domain/window/seenTimes';
 import { pair as fullSkies } from '../../bench/pair';
 import { manyStations } from '../../bench/manyStations';
@@ -125,6 +130,29 @@ describe('windows of all pairs', () => {
       );
     }
     expect(all.flat().length).toBeGreaterThan(20);
+  });
+
+  it('begin with what each station sees by itself, with refraction too', () => {
+    const polar = { ...fullSkies[0], site: { latitudeDeg: 85, longitudeDeg: 20, heightM: 0 } };
+    const stations = [
+      ...manyStations(20),
+      ...fullSkies,
+      polar,
+      { ...polar, sky: {} },
+      { ...polar, sky: { elevationFromDeg: 60 } },
+      { ...polar, sky: { elevationFromDeg: 20, elevationToDeg: 25 } },
+    ];
+    const span = { startMs: START_MS, endMs: START_MS + 30 * DAY_MS };
+    for (const refraction of [false, true]) {
+      const { firsts, beginsMs, endsMs } = seenTimes(span, stations, refraction);
+      stations.forEach((station, index) => {
+        const own = Array.from(
+          beginsMs.subarray(firsts[index], firsts[index + 1]),
+          (startMs, at) => ({ startMs, endMs: endsMs[firsts[index]! + at]! }),
+        );
+        expect(own).toEqual(visibleIntervals(station, span, { refraction }));
+      });
+    }
   });
 
   it('come pair by pair in the same order with the same windows', () => {

@@ -20,6 +20,27 @@ export interface AllPairs {
   readonly endsAfterMs: Int32Array;
 }
 
+/** Room for answers that is kept between searches; what was written into it last is lost with the next search. */
+export class PairRoom {
+  #firsts = new Int32Array(0);
+  #begins = new Int32Array(0);
+  #ends = new Int32Array(0);
+
+  /** Arrays for so many pairs and windows; nothing in them counts but the leading 0 of `firsts`. */
+  take(pairs: number, most: number): ShortTimes {
+    if (this.#firsts.length <= pairs) this.#firsts = new Int32Array(pairs + 1);
+    if (this.#begins.length < most) {
+      this.#begins = new Int32Array(most);
+      this.#ends = new Int32Array(most);
+    }
+    return {
+      firsts: this.#firsts.subarray(0, pairs + 1),
+      begins: this.#begins,
+      ends: this.#ends,
+    };
+  }
+}
+
 /** So many milliseconds still fit into 31 bits. */
 export const LONGEST_KEPT_MS = 24 * DAY_MS;
 /** 320 MB at 8 bytes each; what stays empty is never touched. */
@@ -39,17 +60,21 @@ export function pairIndex(stations: number, first: number, second: number): numb
  * 8 bytes each: 500 stations over 72 hours make 2.5 MB. For more of either use `forEachPair`.
  *
  * @param minimumMinutes as in a search: shorter ones are left out.
+ * @param room where the answer is written; hand in the same one to search again and again without new memory.
  * @throws RangeError where the span is longer or the windows could be more than can be kept.
  */
-export function allPairWindows(seen: SeenTimes, minimumMinutes = 1): AllPairs {
+export function allPairWindows(
+  seen: SeenTimes,
+  minimumMinutes = 1,
+  room = new PairRoom(),
+): AllPairs {
   const { stations, firsts: seenFirsts, startMs, endMs } = seen;
   const most = mostWindows(seen);
   if (most > MOST_KEPT || endMs - startMs > LONGEST_KEPT_MS) {
     throw new RangeError('So many windows are not kept at once: ask pair by pair.');
   }
-  const firsts = new Int32Array(pairCount(stations) + 1);
-  const begins = new Int32Array(most);
-  const ends = new Int32Array(most);
+  const out = room.take(pairCount(stations), most);
+  const { firsts, begins, ends } = out;
   const short: ShortTimes = {
     firsts: seenFirsts,
     begins: after(startMs, seen.beginsMs),
@@ -58,7 +83,7 @@ export function allPairWindows(seen: SeenTimes, minimumMinutes = 1): AllPairs {
   const minimumMs = leastLength(minimumMinutes);
   let pair = 0;
   for (let first = 0; first < stations; first += 1) {
-    pair = intersectWithLater(short, first, stations, minimumMs, { firsts, begins, ends }, pair);
+    pair = intersectWithLater(short, first, stations, minimumMs, out, pair);
   }
   const found = firsts[pair]!;
   return {

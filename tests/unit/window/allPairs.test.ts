@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { DAY_MS, HOUR_MS, type Interval } from '~/domain/time/interval';
 import {
   MOST_KEPT,
+  PairRoom,
   allPairWindows,
   forEachPair,
   pairCount,
@@ -152,6 +153,15 @@ describe('windows of all pairs', () => {
         );
         expect(own).toEqual(visibleIntervals(station, span, { refraction }));
       });
+    }
+  });
+
+  it('are the same in room that held more before', () => {
+    const room = new PairRoom();
+    const many = seenTimes({ startMs: START_MS, endMs: START_MS + 9 * DAY_MS }, manyStations(30));
+    const few = seenTimes({ startMs: START_MS, endMs: START_MS + 5 * DAY_MS }, manyStations(9));
+    for (const seen of [few, many, few]) {
+      expect(allPairWindows(seen, 15, room)).toEqual(allPairWindows(seen, 15));
     }
   });
 

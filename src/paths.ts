@@ -14,11 +14,25 @@ export const paths = {
   joinCrew: (secret: string) => `/join/${secret}`,
 
   windows: '/windows',
-  windowsWith: (stationIds: readonly string[], band?: string) =>
+  windowsWith: (
+    stationIds: readonly string[],
+    band?: string,
+    dates?: { from: string; days: number },
+  ) =>
     `/windows?${new URLSearchParams([
       ...stationIds.map((id) => ['station', id]),
       ...(band ? [['band', band]] : []),
+      ...(dates
+        ? [
+            ['from', dates.from],
+            ['days', String(dates.days)],
+          ]
+        : []),
     ]).toString()}`,
+  /** The year ahead, between two regions, stations or places. */
+  outlook: '/outlook',
+  outlookBetween: (here: string, there: string, band: string) =>
+    `/outlook?${new URLSearchParams({ here, there, band }).toString()}`,
 
   skeds: '/skeds',
   sked: (id: string) => `/skeds/${id}`,
@@ -48,6 +62,7 @@ export const paths = {
   api: {
     moon: '/api/v1/moon',
     windows: '/api/v1/windows',
+    outlook: '/api/v1/outlook',
     searchData: '/api/v1/stations/search-data',
     link: '/api/v1/link',
     openapi: '/api/v1/openapi.json',

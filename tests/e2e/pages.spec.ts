@@ -44,6 +44,12 @@ const PAGES: Checked[] = [
     as: everybody,
   },
   { route: 'windows', address: () => paths.windows, as: everybody },
+  { route: 'outlook', address: () => paths.outlook, as: everybody },
+  {
+    route: 'outlook',
+    address: () => paths.outlookBetween('QA1LUN', 'QB7TID', '1296'),
+    as: [null],
+  },
   { route: 'skeds/index', address: () => paths.skeds, as: forPeople },
   { route: 'skeds/[id]/index', address: (ids) => paths.sked(ids.offered), as: ['Ylva'] },
   { route: 'skeds/[id]/index', address: (ids) => paths.sked(ids.agreed), as: ['Ylva'] },

@@ -36,6 +36,11 @@ const VIEWS = [
 ] as const;
 type ViewId = (typeof VIEWS)[number]['id'];
 
+/** Common windows with a partner say more behind skeds than the Moon over one's own station. */
+function firstGround(grounds: readonly CalendarGround[]): string {
+  return (grounds.find(({ key }) => key.startsWith('pair:')) ?? grounds[0])?.key ?? '';
+}
+
 /** A shorter sked has room for one line. */
 const TWO_LINES_MS = 45 * MINUTE_MS;
 
@@ -63,7 +68,7 @@ function Calendar({ timeZone, nowMs, grounds }: Props) {
     window.innerWidth < 768 ? 'timeGridDay' : 'timeGridWeek',
   );
   const [zone, setZone] = useState('UTC');
-  const [ground, setGround] = useState(grounds[0]?.key ?? '');
+  const [ground, setGround] = useState(() => firstGround(grounds));
   const [shown, setShown] = useState<(Interval & { title: string }) | null>(null);
   const [chosen, setChosen] = useState<Chosen | null>(null);
   const [toast, setToast] = useState<string | null>(null);

@@ -8,8 +8,8 @@ import type { MoonTable } from './table';
  */
 export class StationTrack {
   readonly table: MoonTable;
-  readonly site: Site;
-  readonly observer: Observer;
+  site: Site;
+  observer: Observer;
   readonly east: Float64Array;
   readonly north: Float64Array;
   /** Sine of the airless elevation. */
@@ -23,7 +23,19 @@ export class StationTrack {
     this.east = new Float64Array(nodes);
     this.north = new Float64Array(nodes);
     this.up = new Float64Array(nodes);
-    const grid = table.moonGrid();
+    this.#fill();
+  }
+
+  /** Makes this the track of another site, in the same arrays: for work through many stations, one after the other. */
+  moveTo(site: Site): void {
+    this.site = site;
+    this.observer = observerAt(site);
+    this.#fill();
+  }
+
+  #fill(): void {
+    const nodes = this.table.gridNodes;
+    const grid = this.table.moonGrid();
     const { place, east: e, north: n, up: u } = this.observer;
     const [px, py, pz] = place;
     const [ex, ey] = e;

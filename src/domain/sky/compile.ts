@@ -70,14 +70,11 @@ const AZIMUTH = 5;
 const FIRST_SECTOR = 6;
 
 export function compileSky(limits: SkyLimits, refraction = false): CompiledSky {
-  const airless = (elevationDeg: number) => (refraction ? unrefracted(elevationDeg) : elevationDeg);
-  const sine = (elevationDeg: number | undefined, without: number) =>
-    elevationDeg === undefined ? without : Math.sin(airless(elevationDeg) * DEG);
   const profile = prepareProfile(limits.horizon);
   const from = limits.elevationFromDeg;
   const geometric = profile ? profile.lowestDeg >= 0 : from === undefined || from >= 0;
   const floorDeg = geometric ? 0 : profile ? profile.lowestDeg : from!;
-  const sectors = (limits.blocked ?? []).map((sector) => compileSector(sector, sine));
+  const sectors = (limits.blocked ?? []).map((sector) => compileSector(sector, refraction));
   const azimuth =
     limits.azimuthFromDeg === undefined || limits.azimuthToDeg === undefined
       ? null
@@ -90,10 +87,10 @@ export function compileSky(limits: SkyLimits, refraction = false): CompiledSky {
   return {
     refraction,
     profile,
-    floorSin: sine(floorDeg, 0),
+    floorSin: limitSine(floorDeg, refraction),
     floorCode: geometric ? HORIZON : profile ? PROFILE : ELEVATION,
     boundaries: [
-      ...elevationBoundaries(elevations, floorDeg, airless),
+      ...elevationBoundaries(elevations, floorDeg, refraction),
       ...spans.flatMap((span) => (span && span.widthDeg < 360 ? [span.from, span.to] : [])),
     ],
     causes: [
@@ -101,14 +98,46 @@ export function compileSky(limits: SkyLimits, refraction = false): CompiledSky {
       ...SKY_REASONS.slice(0, FIRST_SECTOR - 1).map((reason) => ({ reason })),
       ...(limits.blocked ?? []).map(({ name }) => ({ reason: 'blockedSector' as const, name })),
     ],
-    lowSin: sine(from, -2),
-    highSin: sine(limits.elevationToDeg, 2),
-    transmitSin: sine(limits.transmitElevationFromDeg, -2),
+    lowSin: sineOr(-2, from, refraction),
+    highSin: sineOr(2, limits.elevationToDeg, refraction),
+    transmitSin: sineOr(-2, limits.transmitElevationFromDeg, refraction),
     azimuth,
     sectors,
     profileBoundaries: profile ? Array.from(profile.azimuthsDeg, azimuthBoundary) : [],
-    profileHighSin: sine(profile?.highestDeg, -2),
+    profileHighSin: sineOr(-2, profile?.highestDeg, refraction),
   };
+}
+
+/**
+ * Sines of the lowest and highest elevation of a sky that nothing else limits, the same as `compileSky` would hold
+ * them; null where azimuths, sectors or a profile matter.
+ */
+export function elevationsOnly(
+  limits: SkyLimits,
+  refraction = false,
+): { floorSin: number; highSin: number } | null {
+  const { elevationFromDeg: from, elevationToDeg: to, transmitElevationFromDeg: transmit } = limits;
+  const azimuths = limits.azimuthFromDeg !== undefined && limits.azimuthToDeg !== undefined;
+  if (azimuths || limits.blocked?.length || limits.horizon?.length) return null;
+  const seenDeg = from ?? 0;
+  const floorDeg = Math.max(seenDeg, transmit ?? seenDeg);
+  return {
+    floorSin: limitSine(floorDeg, refraction),
+    highSin: to === undefined ? 2 : limitSine(to, refraction),
+  };
+}
+
+function airless(elevationDeg: number, refraction: boolean): number {
+  return refraction ? unrefracted(elevationDeg) : elevationDeg;
+}
+
+function limitSine(elevationDeg: number, refraction: boolean): number {
+  return Math.sin(airless(elevationDeg, refraction) * DEG);
+}
+
+/** The sine of a limit that may be absent. */
+function sineOr(without: number, elevationDeg: number | undefined, refraction: boolean): number {
+  return elevationDeg === undefined ? without : limitSine(elevationDeg, refraction);
 }
 
 function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
@@ -119,14 +148,11 @@ function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
   };
 }
 
-function compileSector(
-  sector: BlockedSector,
-  sine: (elevationDeg: number, without: number) => number,
-): Sector {
+function compileSector(sector: BlockedSector, refraction: boolean): Sector {
   return {
     span: azimuthSpan(sector.azimuthFromDeg, sector.azimuthToDeg),
-    lowSin: sector.elevationFromDeg <= -90 ? -2 : sine(sector.elevationFromDeg, -2),
-    highSin: sector.elevationToDeg >= 90 ? 2 : sine(sector.elevationToDeg, 2),
+    lowSin: sector.elevationFromDeg <= -90 ? -2 : limitSine(sector.elevationFromDeg, refraction),
+    highSin: sector.elevationToDeg >= 90 ? 2 : limitSine(sector.elevationToDeg, refraction),
   };
 }
 
@@ -134,12 +160,12 @@ function compileSector(
 function elevationBoundaries(
   elevationsDeg: readonly (number | undefined)[],
   floorDeg: number,
-  airless: (elevationDeg: number) => number,
+  refraction: boolean,
 ): Boundary[] {
   const wanted = elevationsDeg.filter(
     (el): el is number => el !== undefined && el >= floorDeg && el < 90,
   );
-  return [...new Set(wanted)].map((el) => elevationBoundary(airless(el)));
+  return [...new Set(wanted)].map((el) => elevationBoundary(airless(el, refraction)));
 }
 
 function spanHolds(span: AzimuthSpan, east: number, north: number): boolean {

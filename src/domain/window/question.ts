@@ -195,7 +195,8 @@ function readNumber(
   return value;
 }
 
-function readDate(text: string): number | null {
+/** Midnight UTC of "2027-01-18", or null; 2000 to 2099. */
+export function readDate(text: string): number | null {
   if (!/^20\d\d-\d\d-\d\d$/.test(text)) return null;
   const atMs = Date.parse(`${text}T00:00:00Z`);
   return Number.isNaN(atMs) || utcDate(atMs) !== text ? null : atMs;

@@ -18,13 +18,19 @@ interface Run {
 /**
  * What the sky of one station allows over the table's span. Every crossing of every limit is solved; between two
  * crossings next to each other nothing can change, so one question at the middle settles the whole stretch.
+ *
+ * @param grid of this track, to be used again when the track is moved to the next station.
  */
-export function stationTimeline(track: StationTrack, sky: CompiledSky, callSign: string): Timeline {
+export function stationTimeline(
+  track: StationTrack,
+  sky: CompiledSky,
+  callSign: string,
+  grid = new BoundaryGrid(track),
+): Timeline {
   const { table } = track;
   const builder = new TimelineBuilder();
   builder.begin(table.startMs, sky.floorCode);
   const direction = new Float64Array(3);
-  const grid = new BoundaryGrid(track);
   const profile = sky.profile ? new ProfileSearch(track, sky, sky.profile) : null;
   for (const run of runsAboveFloor(track, sky)) {
     const edges: number[] = [];

@@ -1,6 +1,7 @@
 import { OpenAPIRegistry, OpenApiGeneratorV31 } from '@asteasolutions/zod-to-openapi';
 import type { z } from 'zod';
 import { paths } from '../../paths';
+import { outlookAnswerSchema, outlookQuerySchema } from '../outlook/outlookApi';
 import {
   errorAnswerSchema,
   moonAnswerSchema,
@@ -38,12 +39,12 @@ const CALCULATORS: readonly OpenCalculator[] = [
   },
 ];
 
-const REFUSALS: Record<number, string> = {
+const REFUSALS = {
   400: 'The input is not valid; every problem is named with its path.',
   413: 'The body is too large.',
   415: 'The body is not application/json.',
   429: 'Too many requests from this client; Retry-After says when to come back.',
-};
+} as const;
 
 let document: unknown;
 
@@ -51,6 +52,18 @@ let document: unknown;
 export function openApiDocument(): unknown {
   document ??= buildDocument();
   return document;
+}
+
+function refusals(...statuses: (keyof typeof REFUSALS)[]) {
+  return Object.fromEntries(
+    statuses.map((status) => [
+      status,
+      {
+        description: REFUSALS[status],
+        content: { 'application/json': { schema: errorAnswerSchema } },
+      },
+    ]),
+  );
 }
 
 function buildDocument(): unknown {
@@ -65,15 +78,26 @@ function buildDocument(): unknown {
       request: { body: { required: true, content: { 'application/json': { schema: request } } } },
       responses: {
         200: { description: 'The answer.', content: { 'application/json': { schema: answer } } },
-        ...Object.fromEntries(
-          Object.entries(REFUSALS).map(([status, description]) => [
-            status,
-            { description, content: { 'application/json': { schema: errorAnswerSchema } } },
-          ]),
-        ),
+        ...refusals(400, 413, 415, 429),
       },
     });
   }
+  registry.registerPath({
+    method: 'get',
+    path: paths.api.outlook,
+    summary:
+      'The year ahead between two regions, stations or places: day by day, and the best weekends.',
+    tags: ['Open calculators'],
+    security: [],
+    request: { query: outlookQuerySchema },
+    responses: {
+      200: {
+        description: 'The answer.',
+        content: { 'application/json': { schema: outlookAnswerSchema } },
+      },
+      ...refusals(400, 429),
+    },
+  });
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
     info: {

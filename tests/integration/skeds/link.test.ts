@@ -24,7 +24,7 @@ describe('the link of a sked', () => {
     await giveBand(world, A, SETUP);
     const { view, stations, judged } = await seenBy(A);
     expect(skedLink(judged, view)).toEqual({
-      why: 'QB7TID has given no equipment on 1296 MHz. Until then there is no margin.',
+      why: 'There is no margin yet: no equipment on 1296 MHz is known of QB7TID.',
     });
     const judge = judgeOf(judged, view.frequencyMhz, view.mode);
     const { rows } = skedSheet(stations, view, judge);

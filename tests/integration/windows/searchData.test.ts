@@ -130,7 +130,8 @@ describe('the windows page', () => {
     await giveBand(world, A, SETUP);
     expect((await page()).layers!.judge).toMatchObject({
       basis: 'degradation',
-      sentence: 'Judged by degradation, the path alone: QB7TID has given no equipment on 1296 MHz.',
+      sentence:
+        'Judged by degradation, the path alone: no equipment on 1296 MHz is known of QB7TID.',
     });
     await giveBand(world, B, SETUP);
     const { layers } = await page();

@@ -82,7 +82,12 @@ function Line({ line }: { line: LedgerLine }) {
     <tr className={line.sum ? 'ledger__sum' : undefined}>
       <th scope="row">
         {line.label}
-        {line.detail ? <span className="ledger__detail"> {line.detail}</span> : null}
+        {line.detail ? (
+          <>
+            {' '}
+            <span className="ledger__detail">{line.detail}</span>
+          </>
+        ) : null}
       </th>
       <td className="figure">{line.value}</td>
       <td className="figure ledger__level">{line.level}</td>

@@ -128,9 +128,7 @@ export function WindowDetail(props: Props) {
           </Button>
           <LinkDialog sheets={sheets} onClose={() => setSheets(null)} />
         </div>
-      ) : (
-        <p className="label">{judge.sentence}</p>
-      )}
+      ) : null}
       {props.children}
     </section>
   );

@@ -2,7 +2,7 @@ import { computeLink } from '../link/budget';
 import { bandById, type BandId } from '../station/bands';
 import type { ModeId } from '../station/modes';
 import { MINUTE_MS, type Interval } from '../time/interval';
-import { judgeOf, missingSentence, type JudgedStation } from '../window/judge';
+import { judgeOf, missingWords, type JudgedStation } from '../window/judge';
 import { linkSheets, type LinkSheets } from '../window/ledgerSheet';
 
 export interface SkedOnAir extends Interval {
@@ -27,7 +27,7 @@ export function skedLink(
     return { why: 'A link has two ends: with more stations there is no single ledger to show.' };
   }
   if (missing.length > 0) {
-    return { why: `${missingSentence(missing, sked.frequencyMhz)} Until then there is no margin.` };
+    return { why: `There is no margin yet: ${missingWords(missing, sked.frequencyMhz)}.` };
   }
   if (basis !== 'margin' || !first?.setup || !second?.setup) return { why: sentence };
   const timeMs = middleOfSlot(sked);

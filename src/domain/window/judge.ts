@@ -48,7 +48,7 @@ export function judgeOf(
     frequencyMhz,
   });
   if (mode === null) return byDegradation('no mode is chosen.');
-  if (missing.length > 0) return byDegradation(missingSentence(missing, frequencyMhz));
+  if (missing.length > 0) return byDegradation(`${missingWords(missing, frequencyMhz)}.`);
   if (stations.length < 2) return byDegradation('a margin needs two stations.');
   if (stations.length > MOST_STATIONS_BY_MARGIN) {
     return byDegradation(`margins are computed for up to ${MOST_STATIONS_BY_MARGIN} stations.`);
@@ -57,7 +57,7 @@ export function judgeOf(
     const pair = stations.length === 2;
     return {
       basis: 'margin',
-      sentence: `Judged by the margin of the weaker direction${pair ? '' : ' of the weakest pair'} in ${modeById(mode).label}.`,
+      sentence: `Judged by the margin of the ${pair ? 'weaker direction' : 'weakest direction of any pair'} in ${modeById(mode).label}.`,
       missing,
       links: evaluators(stations, frequencyMhz, mode),
       frequencyMhz,
@@ -68,15 +68,15 @@ export function judgeOf(
   }
 }
 
-/** "QB7TID has given no equipment on 1296 MHz." */
-export function missingSentence(callSigns: readonly string[], frequencyMhz: number): string {
+/** "no equipment on 1296 MHz is known of QB7TID" */
+export function missingWords(callSigns: readonly string[], frequencyMhz: number): string {
   const band = bandOfFrequency(frequencyMhz);
   const where = band === null ? `${frequencyMhz} MHz` : bandById(band).label;
   const names =
     callSigns.length < 2
       ? callSigns.join('')
       : `${callSigns.slice(0, -1).join(', ')} and ${callSigns.at(-1)}`;
-  return `${names} ${callSigns.length === 1 ? 'has' : 'have'} given no equipment on ${where}.`;
+  return `no equipment on ${where} is known of ${names}`;
 }
 
 function evaluators(

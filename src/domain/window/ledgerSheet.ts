@@ -88,7 +88,7 @@ function sheetOf(
       label: LEDGER_EXPLANATIONS[key].label,
       detail: details[key] ?? null,
       value: key === 'transmitPower' ? '' : formatSigned(value, 1),
-      level: `${formatNumber(level, 1)}${overNoise ? ' dB' : ''}`,
+      level: overNoise ? `${formatSigned(level, 1)} dB` : formatNumber(level, 1),
       sum: false,
     };
     if (key !== 'receiveGain') return [line];

@@ -4,6 +4,7 @@ import path from 'node:path';
 import { findCommonWindows } from '../../../src/domain/window';
 import type { SkyLimits } from '../../../src/domain/sky';
 import { DAY_MS, HOUR_MS, MINUTE_MS, type Interval } from '../../../src/domain/time/interval';
+import type { BandSetup } from '../../../src/domain/station/setup';
 import type { Viewer } from '../../../src/server/auth/viewer';
 import { readConfig } from '../../../src/server/config';
 import { openDatabase } from '../../../src/server/db/connection';
@@ -31,6 +32,26 @@ export interface World {
   stationIds: Record<string, string>;
   mails: () => Promise<OutboxRow[]>;
   close: () => Promise<void>;
+}
+
+/** A small station on 1296 MHz. */
+export const SETUP: BandSetup = {
+  antenna: { kind: 'dish', diameterM: 2.4, apertureEfficiency: 0.55 },
+  polarization: 'rightCircular',
+  powerAtFeedW: 150,
+  receive: { kind: 'measured', systemTemperatureK: 60 },
+};
+
+/** Gives a station equipment on 1296 MHz. */
+export async function giveBand(world: World, callSign: string, setup: BandSetup): Promise<void> {
+  await world.services.db
+    .insertInto('station_band')
+    .values({
+      station_id: world.stationIds[callSign]!,
+      band: '1296',
+      setup_json: JSON.stringify(setup),
+    })
+    .execute();
 }
 
 /** A new database file with three stations of a keeper each. */

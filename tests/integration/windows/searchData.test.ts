@@ -1,13 +1,16 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { DAY_MS } from '~/domain/time/interval';
 import { acceptSked } from '~/server/skeds/acceptSked';
+import { getPublicStation } from '~/server/stations/getStation';
 import { loadSearchData } from '~/server/windows/loadSearchData';
 import { windowsPage } from '~/server/windows/windowsPage';
 import {
   commonWindows,
+  giveBand,
   newWorld,
   NOW_MS,
   offerFrom,
+  SETUP,
   setSky,
   slotIn,
   type World,
@@ -73,6 +76,18 @@ describe('stations of a question', () => {
     expect(foreign.site).toMatchObject({ latitudeDeg: 57.5, longitudeDeg: 19 });
   });
 
+  it('carry their equipment, which is on their public page too; bare places have none', async () => {
+    await giveBand(world, A, SETUP);
+    const { stations } = await load(null, [A, B, 'JO97ee']);
+    expect(stations.map(({ equipment }) => equipment)).toEqual([
+      [{ band: '1296', setup: SETUP }],
+      [],
+      [],
+    ]);
+    const { station } = await getPublicStation(world.services, null, world.stationIds[A]!);
+    expect(station.equipment).toEqual(stations[0]!.equipment);
+  });
+
   it('do not tell visitors the names of blocked sectors', async () => {
     await setSky(world.services, world.stationIds[A]!, {
       blocked: [
@@ -109,6 +124,21 @@ describe('skeds of the stations', () => {
 });
 
 describe('the windows page', () => {
+  it('judges by margin when both stations have equipment, else by degradation with the reason', async () => {
+    const page = () =>
+      windowsPage(world.services, null, new URLSearchParams(`station=${A}&station=${B}`));
+    await giveBand(world, A, SETUP);
+    expect((await page()).layers!.judge).toMatchObject({
+      basis: 'degradation',
+      sentence:
+        'Judged by degradation, the path alone: no equipment on 1296 MHz is known of QB7TID.',
+    });
+    await giveBand(world, B, SETUP);
+    const { layers } = await page();
+    expect(layers!.judge.basis).toBe('margin');
+    expect(layers!.windowQuality.every(({ basis }) => basis === 'margin')).toBe(true);
+  });
+
   it('puts the viewer’s own station in when none is named', async () => {
     const page = await windowsPage(world.services, world.people[A]!, new URLSearchParams());
     expect(page.question.stations).toEqual([A]);

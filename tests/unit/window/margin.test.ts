@@ -213,10 +213,10 @@ describe('windows judged by margin', () => {
     const of = (part: Partial<WindowQuestion>, stations: ChosenStation[]) =>
       windowLayers({ ...question, minimumMarginDb: 3, ...part }, stations).judge.sentence;
     expect(of({}, [NORTH, BARE])).toBe(
-      'Judged by degradation, the path alone: QC2FAR has given no equipment on 1296 MHz.',
+      'Judged by degradation, the path alone: no equipment on 1296 MHz is known of QC2FAR.',
     );
     expect(of({ band: '144' }, PAIR)).toContain(
-      'QA1LUN and QB7TID have given no equipment on 144 MHz.',
+      'no equipment on 144 MHz is known of QA1LUN and QB7TID.',
     );
     expect(of({ mode: null }, PAIR)).toContain('no mode is chosen');
     const unlimited = windowLayers(question, [NORTH, BARE]);

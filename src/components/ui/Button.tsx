@@ -9,7 +9,11 @@ interface Look {
   children: ReactNode;
 }
 
-function classOf(look: Look['look'], large: boolean | undefined, extra: string | undefined): string {
+function classOf(
+  look: Look['look'],
+  large: boolean | undefined,
+  extra: string | undefined,
+): string {
   return ['button', `button--${look ?? 'framed'}`, large ? 'button--large' : '', extra ?? '']
     .filter(Boolean)
     .join(' ');

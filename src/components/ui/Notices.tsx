@@ -16,7 +16,11 @@ export function ProblemSummary({ title, problems }: { title?: string; problems: 
       <ul>
         {problems.map((problem) => (
           <li key={`${problem.fieldId ?? ''}${problem.message}`}>
-            {problem.fieldId ? <a href={`#${problem.fieldId}`}>{problem.message}</a> : problem.message}
+            {problem.fieldId ? (
+              <a href={`#${problem.fieldId}`}>{problem.message}</a>
+            ) : (
+              problem.message
+            )}
           </li>
         ))}
       </ul>
@@ -57,7 +61,11 @@ export function EmptyState({ title, children }: { title: string; children?: Reac
     <div className="empty">
       <svg viewBox="0 0 110 40" aria-hidden="true" className="h-10 w-[110px]">
         <path d="M6 20C14 4 38 4 48 20Z" fill="var(--color-asleep)" stroke="var(--color-rule2)" />
-        <path d="M62 20C72 36 96 36 104 20Z" fill="var(--color-asleep)" stroke="var(--color-rule2)" />
+        <path
+          d="M62 20C72 36 96 36 104 20Z"
+          fill="var(--color-asleep)"
+          stroke="var(--color-rule2)"
+        />
         <path d="M0 20H110" stroke="var(--color-rule2)" />
       </svg>
       <div>

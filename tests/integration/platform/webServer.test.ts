@@ -70,7 +70,8 @@ describe('the limit on bodies', () => {
     socket.on('data', (chunk) => (answer += chunk.toString()));
     socket.write('POST / HTTP/1.1\r\nHost: x\r\nTransfer-Encoding: chunked\r\n\r\n');
     const pump = setInterval(() => socket.write(`64\r\n${'x'.repeat(100)}\r\n`), 5);
-    await once(socket, 'close');
+    // The line may end by a reset while we still send; only the answer counts.
+    await new Promise((resolve) => socket.once('close', resolve));
     clearInterval(pump);
     expect(answer).toMatch(/^HTTP\/1\.1 413 /);
     expect(answer).toContain('bodyTooLarge');

@@ -57,6 +57,7 @@ export const paths = {
   /** Shown in place of a page that failed, never linked to. */
   problem: '/problem',
   method: '/method',
+  methodPart: (anchor: string) => `/method#${anchor}`,
   help: (slug: string) => `/help/${slug}`,
 
   api: {

@@ -1,3 +1,4 @@
+import { FigureLabel } from '../ui/FigureLabel';
 import { QUALITY_NAMES, scaleWords, type QualityBasis } from '../../domain/window/quality';
 
 interface Props {
@@ -17,7 +18,9 @@ export function RasterLegend({ basis, callSigns, hoursKnown, countsHours, skeds 
   return (
     <div className="legend">
       <ul>
-        <li>{QUALITY_NAMES[basis]}, dB</li>
+        <li>
+          <FigureLabel figure={basis}>{QUALITY_NAMES[basis]}</FigureLabel>, dB
+        </li>
         {scaleWords(basis).map(({ step, words }) => (
           <li key={step}>
             <span className={`legend__band chip--${step}`} />

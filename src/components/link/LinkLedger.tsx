@@ -5,6 +5,7 @@ import {
   type LedgerSheet,
   type LinkSheets,
 } from '../../domain/window/ledgerSheet';
+import { FigureLabel } from '../ui/FigureLabel';
 
 /** Both directions side by side, from the transmitter to the margin. Works as plain HTML too. */
 export function LinkLedger({ sheets }: { sheets: LinkSheets }) {
@@ -46,7 +47,7 @@ function Direction({ sheet }: { sheet: LedgerSheet }) {
           ))}
           <tr className="ledger__sum">
             <th scope="row" colSpan={2}>
-              Margin, {margin.step}
+              <FigureLabel figure="margin">Margin</FigureLabel>, {margin.step}
             </th>
             <td className="figure">
               <span className={`chip chip--${margin.step}`}>{qualityFigure(margin)} dB</span>
@@ -81,7 +82,7 @@ function Line({ line }: { line: LedgerLine }) {
   return (
     <tr className={line.sum ? 'ledger__sum' : undefined}>
       <th scope="row">
-        {line.label}
+        <FigureLabel figure={line.key}>{line.label}</FigureLabel>
         {line.detail ? (
           <>
             {' '}

@@ -7,6 +7,7 @@ import {
   formatNumber,
 } from '../../domain/time/format';
 import type { WindowLayers } from '../../domain/window/layers';
+import { FigureLabel } from '../ui/FigureLabel';
 import { QUALITY_NAMES } from '../../domain/window/quality';
 import { rankingSentence } from '../../domain/window/ranking';
 import type { ChosenStation } from '../../domain/window/searchData';
@@ -61,7 +62,9 @@ export const BestFirst = memo(function BestFirst({
             <th scope="col" className="figure">
               Best
             </th>
-            <th scope="col">{QUALITY_NAMES[basis]}, dB</th>
+            <th scope="col">
+              <FigureLabel figure={basis}>{QUALITY_NAMES[basis]}</FigureLabel>, dB
+            </th>
             {clocks.map((station) => (
               <th key={station.callSign} scope="col" className="figure">
                 {station.callSign}

@@ -12,6 +12,8 @@ import {
   type Quality,
 } from '../../domain/window/quality';
 import type { ChosenStation } from '../../domain/window/searchData';
+import type { FigureId } from '../../domain/window/figures';
+import { FigureLabel } from '../ui/FigureLabel';
 import { QualityChip } from '../ui/Quality';
 
 interface Props {
@@ -26,6 +28,7 @@ interface Props {
 }
 
 interface Row {
+  figure: FigureId;
   name: string;
   unit: string;
   values: ReactNode[];
@@ -39,10 +42,30 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, 
   const doppler = (rateMps: number, otherMps?: number) =>
     formatDoppler(dopplerHz(frequencyMhz, rateMps, otherMps), frequencyMhz).replace(/\s?Hz$/, '');
   const rows: Row[] = [
-    { name: 'Azimuth', unit: '°', values: samples.map((at) => formatNumber(at.azimuthDeg, 1)) },
-    { name: 'Elevation', unit: '°', values: samples.map((at) => formatNumber(at.elevationDeg, 1)) },
-    { name: 'Distance', unit: 'km', values: samples.map((at) => formatNumber(at.rangeKm)) },
-    { name: 'Own echo Doppler', unit: 'Hz', values: samples.map((at) => doppler(at.rangeRateMps)) },
+    {
+      figure: 'azimuth',
+      name: 'Azimuth',
+      unit: '°',
+      values: samples.map((at) => formatNumber(at.azimuthDeg, 1)),
+    },
+    {
+      figure: 'elevation',
+      name: 'Elevation',
+      unit: '°',
+      values: samples.map((at) => formatNumber(at.elevationDeg, 1)),
+    },
+    {
+      figure: 'distance',
+      name: 'Distance',
+      unit: 'km',
+      values: samples.map((at) => formatNumber(at.rangeKm)),
+    },
+    {
+      figure: 'doppler',
+      name: 'Own echo Doppler',
+      unit: 'Hz',
+      values: samples.map((at) => doppler(at.rangeRateMps)),
+    },
   ];
   if (link?.moonUp) rows.push(...linkRows(link));
   const [first, second] = samples;
@@ -63,7 +86,7 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, 
                 <th scope="col">At {formatClock(cursorMs)} UTC</th>
                 {rows.map((row) => (
                   <th key={row.name} scope="col" className="figure">
-                    {row.name}, {row.unit}
+                    <FigureLabel figure={row.figure}>{row.name}</FigureLabel>, {row.unit}
                   </th>
                 ))}
               </tr>
@@ -104,7 +127,9 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, 
           <tbody>
             {rows.map((row) => (
               <tr key={row.name}>
-                <th scope="row">{row.name}</th>
+                <th scope="row">
+                  <FigureLabel figure={row.figure}>{row.name}</FigureLabel>
+                </th>
                 {row.values.map((value, index) => (
                   <td key={stations[index]!.token} className="figure">
                     {value}
@@ -119,23 +144,24 @@ export function CursorTable({ table, stations, cursorMs, frequencyMhz, quality, 
       <p className="figures__between">
         {stations.length === 2 && first && second ? (
           <span>
-            Between you: Doppler{' '}
+            Between you: <FigureLabel figure="doppler">Doppler</FigureLabel>{' '}
             <strong>
               {formatDoppler(
                 dopplerHz(frequencyMhz, first.rangeRateMps, second.rangeRateMps),
                 frequencyMhz,
               )}
             </strong>
-            , path loss{' '}
+            , <FigureLabel figure="pathLoss">path loss</FigureLabel>{' '}
             <strong>
               {formatNumber(pathLossDb(frequencyMhz, first.rangeKm, second.rangeKm), 1)} dB
             </strong>
-            .{link?.moonUp ? ` ${linkSentence(link)}` : null}
+            .{link?.moonUp ? <LinkSentence link={link} /> : null}
           </span>
         ) : null}
         {quality && !link ? (
           <span className="figures__quality">
-            {QUALITY_NAMES[quality.basis]} <QualityChip quality={quality} />
+            <FigureLabel figure={quality.basis}>{QUALITY_NAMES[quality.basis]}</FigureLabel>{' '}
+            <QualityChip quality={quality} />
           </span>
         ) : null}
       </p>
@@ -148,11 +174,13 @@ function linkRows({ directions }: LinkMoment): Row[] {
   const atEnds = [directions[1], directions[0]];
   return [
     {
+      figure: 'systemNoise',
       name: 'System noise',
       unit: 'K',
       values: atEnds.map((direction) => formatNumber(direction.systemTemperatureK)),
     },
     {
+      figure: 'margin',
       name: 'Heard at this end',
       unit: 'dB',
       values: atEnds.map((direction) => {
@@ -167,11 +195,21 @@ function linkRows({ directions }: LinkMoment): Row[] {
   ];
 }
 
-function linkSentence({ model, polarizationOffsetDeg, contactChance }: LinkMoment): string {
-  const { mode, ways, slotMinutes } = model;
-  const offset =
-    ways[0].meeting.kind === 'fixed'
-      ? ''
-      : `Polarisation offset ${formatNumber(polarizationOffsetDeg)}°. `;
-  return `${offset}Margin over ${mode.label} at ${formatNumber(mode.thresholdDb, 1)} dB in ${REFERENCE_BANDWIDTH_HZ} Hz. Chance of a contact in ${slotMinutes} minutes ${chanceWords(contactChance)}.`;
+function LinkSentence({ link }: { link: LinkMoment }) {
+  const { mode, ways, slotMinutes } = link.model;
+  return (
+    <>
+      {' '}
+      {ways[0].meeting.kind === 'fixed' ? null : (
+        <>
+          <FigureLabel figure="polarization">Polarisation offset</FigureLabel>{' '}
+          {formatNumber(link.polarizationOffsetDeg)}°.{' '}
+        </>
+      )}
+      <FigureLabel figure="margin">Margin</FigureLabel> over {mode.label} at{' '}
+      {formatNumber(mode.thresholdDb, 1)} dB in {REFERENCE_BANDWIDTH_HZ} Hz.{' '}
+      <FigureLabel figure="chance">Chance of a contact</FigureLabel> in {slotMinutes} minutes{' '}
+      {chanceWords(link.contactChance)}.
+    </>
+  );
 }

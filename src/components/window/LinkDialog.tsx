@@ -9,6 +9,7 @@ import {
 import { LedgerTerms, LinkLedger } from '../link/LinkLedger';
 import { Button } from '../ui/Button';
 import { Dialog } from '../ui/Dialog';
+import { FigureLabel } from '../ui/FigureLabel';
 
 interface Props {
   /** Null while closed. */
@@ -44,8 +45,9 @@ function Content({ sheets, onClose }: { sheets: LinkSheets; onClose: () => void 
   return (
     <>
       <p>
-        {sheets.weaker} {MODEL_ERROR_SENTENCE} Chance of a contact in a slot of {sheets.slotMinutes}{' '}
-        minutes: <strong>{chanceWords(sheets.contactChance)}</strong>.
+        {sheets.weaker} {MODEL_ERROR_SENTENCE}{' '}
+        <FigureLabel figure="chance">Chance of a contact</FigureLabel> in a slot of{' '}
+        {sheets.slotMinutes} minutes: <strong>{chanceWords(sheets.contactChance)}</strong>.
       </p>
       {sheets.notes.map((note) => (
         <p key={note} className="label">

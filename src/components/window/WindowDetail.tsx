@@ -14,6 +14,7 @@ import { TwinTide } from '../chart/TwinTide';
 import type { Answer } from './answer';
 import { Button } from '../ui/Button';
 import { CursorTable } from './CursorTable';
+import { CurvesThrough } from './CurvesThrough';
 import { detailView } from './detailView';
 import { LinkDialog } from './LinkDialog';
 import { useWidth } from './useWidth';
@@ -64,6 +65,8 @@ export function WindowDetail(props: Props) {
     const { label } = bandById(question.band);
     setSheets(linkSheets(describe(moment), [first, second], question.mode, label, cursorMs));
   };
+  const moveCursor = (atMs: number) =>
+    onCursor(Math.min(Math.max(atMs, view.shown.startMs), view.shown.endMs));
   const sameDay = formatDay(startMs) === formatDay(endMs);
   return (
     <section className="detail" aria-labelledby="detail-title" ref={element}>
@@ -106,9 +109,7 @@ export function WindowDetail(props: Props) {
             taken={inView(taken)}
             cursorMs={cursorMs}
             slot={slot}
-            onCursor={(atMs) =>
-              onCursor(Math.min(Math.max(atMs, view.shown.startMs), view.shown.endMs))
-            }
+            onCursor={moveCursor}
             onSlot={onSlot}
           />
         </>
@@ -128,6 +129,16 @@ export function WindowDetail(props: Props) {
           </Button>
           <LinkDialog sheets={sheets} onClose={() => setSheets(null)} />
         </div>
+      ) : null}
+      {width > 0 ? (
+        <CurvesThrough
+          answer={answer}
+          view={view}
+          window={window}
+          width={width}
+          cursorMs={cursorMs}
+          onCursor={moveCursor}
+        />
       ) : null}
       {props.children}
     </section>

@@ -1,10 +1,17 @@
 import { allPairs500x72h } from './allPairs';
+import { drag60days } from './drag';
 import { growth } from './growth';
 import { linkPair30d } from './link';
 import { mergeResults, printResults, type Bench } from './results';
 import { windowsPair30d } from './windowsPair30d';
 
-const BENCHES: readonly Bench[] = [windowsPair30d, allPairs500x72h, growth, linkPair30d];
+const BENCHES: readonly Bench[] = [
+  windowsPair30d,
+  allPairs500x72h,
+  growth,
+  linkPair30d,
+  drag60days,
+];
 
 const filter = process.argv[2] ?? '';
 const chosen = BENCHES.filter(({ name }) => name.startsWith(filter));

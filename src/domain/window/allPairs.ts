@@ -22,22 +22,12 @@ export interface AllPairs {
 
 /** Room for answers that is kept between searches; what was written into it last is lost with the next search. */
 export class PairRoom {
-  #firsts = new Int32Array(0);
-  #begins = new Int32Array(0);
-  #ends = new Int32Array(0);
+  #words = new Int32Array(0);
 
-  /** Arrays for so many pairs and windows; nothing in them counts but the leading 0 of `firsts`. */
-  take(pairs: number, most: number): ShortTimes {
-    if (this.#firsts.length <= pairs) this.#firsts = new Int32Array(pairs + 1);
-    if (this.#begins.length < most) {
-      this.#begins = new Int32Array(most);
-      this.#ends = new Int32Array(most);
-    }
-    return {
-      firsts: this.#firsts.subarray(0, pairs + 1),
-      begins: this.#begins,
-      ends: this.#ends,
-    };
+  /** At least so many numbers, whatever they are. */
+  take(least: number): Int32Array {
+    if (this.#words.length < least) this.#words = new Int32Array(least);
+    return this.#words;
   }
 }
 
@@ -68,30 +58,15 @@ export function allPairWindows(
   minimumMinutes = 1,
   room = new PairRoom(),
 ): AllPairs {
-  const { stations, firsts: seenFirsts, startMs, endMs } = seen;
+  const { stations, startMs, endMs } = seen;
   const most = mostWindows(seen);
   if (most > MOST_KEPT || endMs - startMs > LONGEST_KEPT_MS) {
     throw new RangeError('So many windows are not kept at once: ask pair by pair.');
   }
-  const out = room.take(pairCount(stations), most);
-  const { firsts, begins, ends } = out;
-  const short: ShortTimes = {
-    firsts: seenFirsts,
-    begins: after(startMs, seen.beginsMs),
-    ends: after(startMs, seen.endsMs),
-  };
+  const row = new PairRow(seen, room, most);
   const minimumMs = leastLength(minimumMinutes);
-  let pair = 0;
-  for (let first = 0; first < stations; first += 1) {
-    pair = intersectWithLater(short, first, stations, minimumMs, out, pair);
-  }
-  const found = firsts[pair]!;
-  return {
-    startMs,
-    firsts,
-    beginsAfterMs: begins.subarray(0, found),
-    endsAfterMs: ends.subarray(0, found),
-  };
+  for (let first = 0; first < stations; first += 1) row.intersect(first, minimumMs);
+  return { startMs, ...row.windows() };
 }
 
 /**
@@ -103,11 +78,8 @@ export function forEachPair(
   minimumMinutes: number,
   visit: (first: number, second: number, windows: PairWindows) => void,
 ): void {
-  const { stations, firsts } = seen;
-  let longest = 0;
-  for (let station = 0; station < stations; station += 1) {
-    longest = Math.max(longest, firsts[station + 1]! - firsts[station]!);
-  }
+  const { stations } = seen;
+  const longest = longestList(seen);
   const windows = {
     beginsMs: new Float64Array(2 * longest + 1),
     endsMs: new Float64Array(2 * longest + 1),
@@ -121,12 +93,6 @@ export function forEachPair(
       visit(first, second, windows);
     }
   }
-}
-
-function after(startMs: number, timesMs: Float64Array): Int32Array {
-  const short = new Int32Array(timesMs.length);
-  for (let index = 0; index < short.length; index += 1) short[index] = timesMs[index]! - startMs;
-  return short;
 }
 
 function leastLength(minimumMinutes: number): number {
@@ -172,50 +138,141 @@ function intersect(
   return found;
 }
 
-/** Lists of stretches in whole milliseconds that fit into 31 bits. */
-interface ShortTimes {
-  readonly firsts: Int32Array;
-  readonly begins: Int32Array;
-  readonly ends: Int32Array;
-}
+/** Stretches are looked up by their begin in steps of 2¹⁹ ms, 8.7 minutes. */
+const STEP_BITS = 19;
 
 /**
- * `intersect` in whole numbers, for a station and all after it: a difference shifted by 31 is −1 where it is
- * negative and 0 where not. Begins with pair `pair` and returns the one after the last.
+ * `intersect` in whole numbers, for a station and all after it at once. For each step of time is noted which stretch
+ * of the first station is next there. So every stretch of all the others knows by itself where to begin, one after
+ * the other through all stations, and no step waits for the one before. Everything lies in one array, which is
+ * quicker than many: the places below are where its parts begin.
  */
-function intersectWithLater(
-  { firsts, begins, ends }: ShortTimes,
-  first: number,
-  stations: number,
-  minimumMs: number,
-  out: ShortTimes,
-  pair: number,
-): number {
-  const { firsts: outFirsts, begins: outBegins, ends: outEnds } = out;
-  const firstBegin = firsts[first]!;
-  const firstEnd = firsts[first + 1]!;
-  let at = pair;
-  let found = outFirsts[at]!;
-  for (let second = first + 1; second < stations; second += 1) {
-    const secondEnd = firsts[second + 1]!;
-    let one = firstBegin;
-    let other = firsts[second]!;
-    while (one < firstEnd && other < secondEnd) {
-      const oneBegin = begins[one]!;
-      const otherEnd = ends[other]!;
-      const later = (oneBegin - begins[other]!) | 0;
-      const longer = (ends[one]! - otherEnd) | 0;
-      const oneGoesOn = longer >> 31;
-      const begin = (oneBegin - (later & (later >> 31))) | 0;
-      const end = (otherEnd + (longer & oneGoesOn)) | 0;
-      outBegins[found] = begin;
-      outEnds[found] = end;
-      found = (found + 1 - ((end - begin - minimumMs) >>> 31)) | 0;
-      one = (one - oneGoesOn) | 0;
-      other = (other + 1 + oneGoesOn) | 0;
+class PairRow {
+  readonly #words: Int32Array;
+  readonly #count: number;
+  readonly #lengthMs: number;
+  /** Of each stretch of all stations: begin, end, step of the begin, station. */
+  readonly #seen: number;
+  readonly #stretches: number;
+  /** Begins and ends of the first station's stretches, and one at the end of time, so that nobody asks how many. */
+  readonly #row: number;
+  /** By step of time, the place in the row of the first stretch that ends later than the step begins. */
+  readonly #next: number;
+  readonly #steps: number;
+  readonly #begins: number;
+  readonly #ends: number;
+  /** Stations that never see the Moon. */
+  readonly #blind: number[] = [];
+
+  constructor(
+    readonly seenTimes: SeenTimes,
+    room: PairRoom,
+    most: number,
+  ) {
+    const { stations, firsts, beginsMs, endsMs, startMs, endMs } = seenTimes;
+    const stretches = firsts[stations]!;
+    this.#count = stations;
+    this.#lengthMs = endMs - startMs;
+    this.#stretches = stretches;
+    this.#steps = (this.#lengthMs >> STEP_BITS) + 1;
+    this.#seen = pairCount(stations) + 1;
+    this.#row = this.#seen + 4 * stretches;
+    this.#next = this.#row + 2 * longestList(seenTimes) + 4;
+    this.#begins = this.#next + this.#steps;
+    this.#ends = this.#begins + most;
+    const words = room.take(this.#ends + most);
+    this.#words = words;
+    words[0] = 0;
+    let at = this.#seen;
+    for (let station = 0; station < stations; station += 1) {
+      const to = firsts[station + 1]!;
+      if (to === firsts[station]) this.#blind.push(station);
+      for (let stretch = firsts[station]!; stretch < to; stretch += 1, at += 4) {
+        const begin = beginsMs[stretch]! - startMs;
+        words[at] = begin;
+        words[at + 1] = endsMs[stretch]! - startMs;
+        words[at + 2] = this.#next + (begin >> STEP_BITS);
+        words[at + 3] = station;
+      }
     }
-    at += 1;
-    outFirsts[at] = found;
   }
-  return at;
+
+  windows(): Omit<AllPairs, 'startMs'> {
+    const words = this.#words;
+    const pairs = pairCount(this.#count);
+    const found = words[pairs]!;
+    return {
+      firsts: words.subarray(0, pairs + 1),
+      beginsAfterMs: words.subarray(this.#begins, this.#begins + found),
+      endsAfterMs: words.subarray(this.#ends, this.#ends + found),
+    };
+  }
+
+  /**
+   * Writes the pairs of this station with every later one; those of the stations before it must be there. The
+   * greater of two numbers is one plus their difference where that is positive: shifted by 31, a difference is −1
+   * where it is negative and 0 where not.
+   */
+  intersect(first: number, minimumMs: number): void {
+    this.#lay(first);
+    const words = this.#words;
+    const { firsts } = this.seenTimes;
+    // The pair with station s ends at `pair + s`.
+    const pair = (pairIndex(this.#count, first, first + 1) - first) | 0;
+    const toEnds = (this.#ends - this.#begins) | 0;
+    const stop = (this.#seen + 4 * this.#stretches) | 0;
+    let found = (this.#begins + words[pair + first]!) | 0;
+    const base = this.#begins | 0;
+    const leastMs = Math.min(minimumMs, this.#lengthMs + 1) | 0;
+    for (
+      let other = (this.#seen + 4 * firsts[first + 1]!) | 0;
+      other < stop;
+      other = (other + 4) | 0
+    ) {
+      const otherBegin = words[other]!;
+      const otherEnd = words[other + 1]!;
+      let one = words[words[other + 2]!]!;
+      do {
+        const later = (words[one]! - otherBegin) | 0;
+        const longer = (words[one + 1]! - otherEnd) | 0;
+        const begin = (otherBegin + (later & ~(later >> 31))) | 0;
+        const end = (otherEnd + (longer & (longer >> 31))) | 0;
+        words[found] = begin;
+        words[found + toEnds] = end;
+        found = (found + 1 - ((((end - begin) | 0) - leastMs) >>> 31)) | 0;
+        one = (one + 2) | 0;
+      } while (words[one]! < otherEnd);
+      words[pair + words[other + 3]!] = (found - base) | 0;
+    }
+    for (const station of this.#blind) {
+      if (station > first) words[pair + station] = words[pair + station - 1]!;
+    }
+  }
+
+  #lay(first: number): void {
+    const words = this.#words;
+    const { firsts } = this.seenTimes;
+    const to = this.#seen + 4 * firsts[first + 1]!;
+    let row = this.#row;
+    const next = this.#next;
+    let step = next;
+    for (let at = this.#seen + 4 * firsts[first]!; at < to; at += 4, row += 2) {
+      const end = words[at + 1]!;
+      words[row] = words[at]!;
+      words[row + 1] = end;
+      const after = next + ((end - 1) >> STEP_BITS) + 1;
+      words.fill(row, step, after);
+      step = after;
+    }
+    words.fill(row, step, next + this.#steps);
+    words.fill(this.#lengthMs, row, row + 4);
+  }
+}
+
+function longestList({ stations, firsts }: SeenTimes): number {
+  let longest = 0;
+  for (let station = 0; station < stations; station += 1) {
+    longest = Math.max(longest, firsts[station + 1]! - firsts[station]!);
+  }
+  return longest;
 }

@@ -4,6 +4,10 @@ import { gridRoots, type GridFunction } from './roots';
 
 /** So far from the zenith (as a share of the horizontal component) the Moon cannot change halves in one step. */
 const AROUND_ZENITH = 0.1;
+/** From one node to the next, 5° of the Earth's turn, the distance from any plane changes by less than this. */
+const STEP = 0.09;
+/** Nodes so far from the boundary are leapt over. */
+const FAR = 3 * STEP;
 
 /** One boundary of a station's sky after the other as a function of time along the Moon's track. */
 export class BoundaryGrid implements GridFunction {
@@ -36,9 +40,19 @@ export class BoundaryGrid implements GridFunction {
     const { east, north, up } = this.track;
     const { values } = this;
     const { east: be, north: bn, up: bu, level } = boundary;
-    for (let node = first - 1; node <= last + 1; node += 1) {
-      values[node] = be * east[node]! + bn * north[node]! + bu * up[node]! - level;
+    let from = first;
+    let node = first - 1;
+    while (node <= last + 1) {
+      const value = be * east[node]! + bn * north[node]! + bu * up[node]! - level;
+      values[node] = value;
+      const distance = Math.abs(value);
+      if (distance > FAR) {
+        if (node > from) gridRoots(this, from, Math.min(node, last), edges);
+        node += Math.floor(distance / STEP) - 1;
+        // The node leapt to is still a whole step from the boundary, and the one before it is not filled.
+        from = node + 1;
+      } else node += 1;
     }
-    gridRoots(this, first, last, edges);
+    if (from < last) gridRoots(this, from, last, edges);
   }
 }

@@ -81,9 +81,26 @@ function classify(
   let fromMs = track.nodeMs(run.first);
   for (const edgeMs of edges) {
     if (edgeMs - fromMs < 1e-3) continue;
-    track.direction((fromMs + edgeMs) / 2, direction);
-    builder.begin(fromMs, skyCode(sky, direction[0]!, direction[1]!, direction[2]!));
+    builder.begin(fromMs, codeBetween(track, sky, fromMs, edgeMs, direction));
     fromMs = edgeMs;
   }
   if (run.last < track.up.length - 2) builder.begin(endMs, sky.floorCode);
+}
+
+/** What holds in the middle of a stretch, or, where one lies well inside, at the node nearest to it. */
+function codeBetween(
+  track: StationTrack,
+  sky: CompiledSky,
+  fromMs: number,
+  toMs: number,
+  direction: Float64Array,
+): number {
+  const { gridStartMs, gridStepMs } = track.table;
+  const middleMs = (fromMs + toMs) / 2;
+  if (toMs - fromMs > 2 * gridStepMs) {
+    const node = Math.round((middleMs - gridStartMs) / gridStepMs);
+    return skyCode(sky, track.east[node]!, track.north[node]!, track.up[node]!);
+  }
+  track.direction(middleMs, direction);
+  return skyCode(sky, direction[0]!, direction[1]!, direction[2]!);
 }

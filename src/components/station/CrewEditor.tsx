@@ -6,6 +6,7 @@ import { paths } from '../../paths';
 import { Button } from '../ui/Button';
 import { Dialog } from '../ui/Dialog';
 import { SelectField, TextField } from '../ui/Field';
+import { IslandForm } from '../ui/IslandForm';
 import { ProblemSummary } from '../ui/Notices';
 import { Toast } from '../ui/Toast';
 import { fieldId, sendJson, useSave } from './useSave';
@@ -203,7 +204,7 @@ function InviteForm({
     setEmail('');
   };
   return (
-    <form
+    <IslandForm
       noValidate
       className="stack"
       onSubmit={(event) => {
@@ -240,6 +241,6 @@ function InviteForm({
           Send the invitation
         </Button>
       </div>
-    </form>
+    </IslandForm>
   );
 }

@@ -7,6 +7,7 @@ import type { BandEquipment } from '../../domain/station/views';
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
 import { SelectField } from '../ui/Field';
+import { IslandForm } from '../ui/IslandForm';
 import { Cautions, ProblemSummary } from '../ui/Notices';
 import { BandForm } from './BandForm';
 import { SaveBar } from './SaveBar';
@@ -57,7 +58,7 @@ export function EquipmentEditor({ station, records, next, onSaved }: Props) {
   };
 
   return (
-    <form
+    <IslandForm
       noValidate
       className="columns columns--margin"
       onSubmit={(event) => {
@@ -119,7 +120,7 @@ export function EquipmentEditor({ station, records, next, onSaved }: Props) {
           formula; sky, Moon, Sun and atmosphere are added for each moment.
         </p>
       </div>
-    </form>
+    </IslandForm>
   );
 }
 

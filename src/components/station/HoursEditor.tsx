@@ -4,6 +4,7 @@ import { formatLocal } from '../../domain/time/format';
 import type { Weekday, WeeklyStretch } from '../../domain/time/weeklyHours';
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
+import { IslandForm } from '../ui/IslandForm';
 import { ProblemSummary } from '../ui/Notices';
 import { DaysOff } from './DaysOff';
 import { SaveBar } from './SaveBar';
@@ -44,7 +45,7 @@ export function HoursEditor({ station, nowMs }: Props) {
     editor.touch();
   };
   return (
-    <form
+    <IslandForm
       noValidate
       className="columns columns--detail"
       onSubmit={(event) => {
@@ -80,6 +81,6 @@ export function HoursEditor({ station, nowMs }: Props) {
         <SaveBar editor={editor} label="Save the hours" done="The hours are saved." />
       </div>
       <WeekResult hours={{ ...hours, timeZone: station.timeZone }} nowMs={nowMs} />
-    </form>
+    </IslandForm>
   );
 }

@@ -17,6 +17,7 @@ import { formatNumber } from '../../domain/time/format';
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
 import { SelectField, TextField } from '../ui/Field';
+import { IslandForm } from '../ui/IslandForm';
 import { ProblemSummary } from '../ui/Notices';
 import { FigureField } from './FigureField';
 import { fieldId, useSave } from './useSave';
@@ -58,7 +59,7 @@ export function NoiseRecordForm({ stationId, band, antenna, today, onAdded }: Pr
     setNote('');
   };
   return (
-    <form
+    <IslandForm
       noValidate
       className="stack"
       onSubmit={(event) => {
@@ -151,7 +152,7 @@ export function NoiseRecordForm({ stationId, band, antenna, today, onAdded }: Pr
           ? 'A load in place of the feed, then the feed on cold sky. The load’s relay counts as part of the receiver.'
           : 'Peak on the Sun against cold sky at the same elevation. The flux carried from 10.7 cm is right to about 30 %, which is 1.1 dB of G/T; bursts spoil it.'}
       </p>
-    </form>
+    </IslandForm>
   );
 }
 

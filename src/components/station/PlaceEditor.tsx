@@ -13,6 +13,7 @@ import {
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
 import { TextField } from '../ui/Field';
+import { IslandForm } from '../ui/IslandForm';
 import { ProblemSummary } from '../ui/Notices';
 import { Toast } from '../ui/Toast';
 import { FigureField } from './FigureField';
@@ -97,7 +98,7 @@ export function PlaceEditor({ station, draft: first, zones, nowMs }: Props) {
   };
 
   return (
-    <form
+    <IslandForm
       noValidate
       className="stack"
       onSubmit={(event) => {
@@ -187,7 +188,7 @@ export function PlaceEditor({ station, draft: first, zones, nowMs }: Props) {
         {unsaved && !saving && !leaving ? <span className="quiet">Not saved yet.</span> : null}
         {saved ? <Toast message="The place is saved." onDone={() => setSaved(false)} /> : null}
       </div>
-    </form>
+    </IslandForm>
   );
 }
 

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import { profileUpdateSchema } from '../../domain/station/schema';
 import { paths } from '../../paths';
 import { CheckField, TextAreaField } from '../ui/Field';
+import { IslandForm } from '../ui/IslandForm';
 import { ProblemSummary } from '../ui/Notices';
 import { SaveBar } from './SaveBar';
 import { useEditor } from './useEditor';
@@ -21,7 +22,7 @@ export function ProfileEditor({ station }: Props) {
     version: station.version,
   });
   return (
-    <form
+    <IslandForm
       noValidate
       className="form"
       onSubmit={(event) => {
@@ -53,6 +54,6 @@ export function ProfileEditor({ station }: Props) {
         error={editor.errorOf('note')}
       />
       <SaveBar editor={editor} label="Save the profile" done="The profile is saved." />
-    </form>
+    </IslandForm>
   );
 }

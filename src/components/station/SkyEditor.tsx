@@ -3,6 +3,7 @@ import type { BlockedSector, HorizonPoint, SkyLimits } from '../../domain/sky';
 import { skyUpdateSchema } from '../../domain/station/schema';
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
+import { IslandForm } from '../ui/IslandForm';
 import { Cautions, ProblemSummary } from '../ui/Notices';
 import { HorizonEditor } from './HorizonEditor';
 import { SaveBar } from './SaveBar';
@@ -56,7 +57,7 @@ export function SkyEditor({ station, track, next }: Props) {
   };
 
   return (
-    <form
+    <IslandForm
       noValidate
       className="stack"
       onSubmit={(event) => {
@@ -130,7 +131,7 @@ export function SkyEditor({ station, track, next }: Props) {
         label={next ? 'Save and go on to the equipment' : 'Save the sky'}
         done="The sky is saved. New searches use it."
       />
-    </form>
+    </IslandForm>
   );
 }
 

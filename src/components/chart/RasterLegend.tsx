@@ -19,7 +19,9 @@ export function RasterLegend({ basis, callSigns, hoursKnown, countsHours, skeds 
     <div className="legend">
       <ul>
         <li>
-          <FigureLabel figure={basis}>{QUALITY_NAMES[basis]}</FigureLabel>, dB
+          <span>
+            <FigureLabel figure={basis}>{QUALITY_NAMES[basis]}</FigureLabel>, dB
+          </span>
         </li>
         {scaleWords(basis).map(({ step, words }) => (
           <li key={step}>

@@ -1,5 +1,4 @@
 import { BAND_IDS, type BandId } from '../station/bands';
-import { DAY_MS } from '../time/interval';
 import { readDate, startOfUtcDay, utcDate } from '../window/question';
 
 export const OUTLOOK_DAYS = 365;
@@ -50,8 +49,4 @@ export function parseOutlookQuestion(
 function end(raw: string | null): string | null {
   const text = raw?.trim().slice(0, 80) ?? '';
   return text === '' ? null : text;
-}
-
-export function outlookEndMs({ fromMs }: OutlookQuestion): number {
-  return fromMs + OUTLOOK_DAYS * DAY_MS;
 }

@@ -133,11 +133,6 @@ export function formatAngle(angleDeg: number, decimals = 1): string {
   return `${formatNumber(angleDeg, decimals)}°`;
 }
 
-/** "−6.1 dB" */
-export function formatDb(valueDb: number): string {
-  return `${formatNumber(valueDb, 1)}${NO_BREAK_SPACE}dB`;
-}
-
 /** Doppler with its sign: to 1 Hz below 1.3 GHz ("−540 Hz"), to 10 Hz from there on ("+2 710 Hz"). */
 export function formatDoppler(dopplerHz: number, frequencyMhz: number): string {
   const stepHz = frequencyMhz < 1300 ? 1 : 10;

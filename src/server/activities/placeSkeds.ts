@@ -21,15 +21,9 @@ export interface Placing {
   actorId: string;
 }
 
-/** A sked that a revision made, moved, cancelled or left, as it stands now. */
-export interface PlacedSked {
-  slot: StoredSlot;
-  sked: SkedRow;
-}
-
 export interface PlacedDiff {
   diff: RevisionDiff<StoredSlot>;
-  /** By slot key of the draft, or of the revision before for what was removed. */
+  /** The sked of each slot of the draft, and of each removed one of the revision before, as it stands now. */
   skeds: Map<StoredSlot, SkedRow>;
 }
 
@@ -41,7 +35,11 @@ export interface PlacedDiff {
  * Throws `Conflict` with every reason when a slot has begun already, was given back by a station at that very time, or
  * a station has another agreed sked then; the database itself refuses an overlap as the last word.
  */
-export async function placeSkeds(tx: Tx, services: Services, placing: Placing): Promise<PlacedDiff> {
+export async function placeSkeds(
+  tx: Tx,
+  services: Services,
+  placing: Placing,
+): Promise<PlacedDiff> {
   const nowMs = services.now();
   const standing = await skedsOf(tx, placing.before);
   const inForce = placing.before.filter((slot) => {
@@ -58,7 +56,7 @@ export async function placeSkeds(tx: Tx, services: Services, placing: Placing): 
     await tx.deleteFrom('booking').where('sked_id', '=', slot.skedId).execute();
   }
   for (const slot of diff.removed) {
-    skeds.set(slot, await cancelSlot(tx, placing, slot, skedOf(slot), nowMs));
+    skeds.set(slot, await cancelSlot(tx, placing, skedOf(slot), nowMs));
   }
   for (const { before, after } of diff.moved) {
     skeds.set(after, await moveSlot(tx, placing, after, skedOf(before), nowMs));
@@ -128,7 +126,6 @@ async function refuseWhatCannotBe(
 async function cancelSlot(
   tx: Tx,
   placing: Placing,
-  slot: StoredSlot,
   sked: SkedRow,
   nowMs: number,
 ): Promise<SkedRow> {

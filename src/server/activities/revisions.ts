@@ -23,7 +23,9 @@ export async function loadRevision(
 ): Promise<LoadedRevision | null> {
   let query = db.selectFrom('activity_revision').selectAll().where('activity_id', '=', activityId);
   query =
-    typeof which === 'number' ? query.where('number', '=', which) : query.where('state', '=', which);
+    typeof which === 'number'
+      ? query.where('number', '=', which)
+      : query.where('state', '=', which);
   const row = await query.executeTakeFirst();
   if (!row) return null;
   const slots = await db

@@ -1,0 +1,136 @@
+import { changesOf, itineraryOf } from '../../domain/activity/itinerary';
+import { changesAnything, diffOfStation } from '../../domain/activity/revision';
+import { calendarOf } from '../../domain/sked/standing';
+import { paths } from '../../paths';
+import type { ActivityRow, SkedRow } from '../db/tables';
+import type { Tx } from '../db/transaction';
+import { enqueueMail } from '../mail/outbox';
+import { renderMail } from '../mail/shell';
+import { planMail } from '../mail/templates/planMail';
+import { publishedCalendar } from '../mail/templates/skedCalendar';
+import { skedFacts } from '../mail/templates/skedFacts';
+import type { Services } from '../services';
+import { crewsOfSkeds, type CrewMember } from '../skeds/crews';
+import { partyStation, type PartyStation } from '../skeds/load';
+import { linkToActivity } from './linkToActivity';
+import type { PlacedDiff } from './placeSkeds';
+import type { StoredSlot } from './revisions';
+
+interface Published {
+  activity: ActivityRow;
+  number: number;
+  note: string;
+  /** Whether it is the first plan of the activity. */
+  first: boolean;
+  placed: PlacedDiff;
+}
+
+/**
+ * Mails everybody in the crews of stations for which the revision changes something, one mail a person: the itinerary,
+ * what changed, and the calendar entries of what changed. Returns how many mails.
+ */
+export async function tellAffected(
+  tx: Tx,
+  services: Services,
+  { activity, number, note, first, placed }: Published,
+): Promise<number> {
+  const { diff, skeds } = placed;
+  const changed = [...diff.added, ...diff.removed, ...diff.moved.map(({ after }) => after)];
+  const current = [...diff.kept, ...diff.added, ...diff.moved.map(({ after }) => after)];
+  const stations = await stationsOf(tx, [...changed, ...current]);
+  const callSigns = new Map([...stations].map(([id, { callSign }]) => [id, callSign]));
+  const coordinator = await tx
+    .selectFrom('person')
+    .select('name')
+    .where('id', '=', activity.coordinator_id)
+    .executeTakeFirstOrThrow();
+  const readers = await readersOf(tx, changed, skeds);
+  for (const reader of readers) {
+    const affected = reader.stationIds
+      .map((id) => ({ id, own: diffOfStation(diff, id) }))
+      .filter(({ own }) => changesAnything(own));
+    const { subject, content } = planMail({
+      title: activity.title,
+      first,
+      number,
+      coordinatorName: coordinator.name,
+      note,
+      url: await linkToActivity(tx, services, reader, activity),
+      stations: affected.map(({ id, own }) => ({
+        callSign: callSigns.get(id)!,
+        itinerary: itineraryOf(current, id, callSigns, reader.timeZone),
+        changes: changesOf(own, id, callSigns),
+      })),
+    });
+    const ids = new Set(affected.map(({ id }) => id));
+    const entries = changed
+      .filter((slot) => ids.has(slot.stationA) || ids.has(slot.stationB))
+      .map((slot) => entryOf(services, skeds.get(slot)!, slot, stations, reader));
+    await enqueueMail(tx, services, {
+      to: reader.email,
+      subject,
+      ...renderMail(content),
+      topic: 'sked',
+      personId: reader.personId,
+      activityId: activity.id,
+      calendar: {
+        method: 'PUBLISH',
+        body: publishedCalendar(activity.title, services.config.smtp.from, entries),
+      },
+    });
+  }
+  return readers.length;
+}
+
+function entryOf(
+  { config, now }: Services,
+  sked: SkedRow,
+  slot: StoredSlot,
+  stations: ReadonlyMap<string, PartyStation>,
+  reader: CrewMember,
+) {
+  const interval = { startMs: sked.start_at, endMs: sked.end_at };
+  return {
+    facts: skedFacts(
+      sked,
+      [slot.stationA, slot.stationB].map((id) => stations.get(id)!),
+      interval,
+      config.publicUrl + paths.sked(sked.id),
+    ),
+    recipient: reader,
+    entry: {
+      ...calendarOf({ state: sked.state, sequence: sked.sequence, ...interval }),
+      asked: false,
+      stampMs: now(),
+    },
+  };
+}
+
+async function stationsOf(
+  tx: Tx,
+  slots: readonly StoredSlot[],
+): Promise<Map<string, PartyStation>> {
+  const ids = [...new Set(slots.flatMap(({ stationA, stationB }) => [stationA, stationB]))];
+  if (ids.length === 0) return new Map();
+  const rows = await tx.selectFrom('station').selectAll().where('id', 'in', ids).execute();
+  return new Map(rows.map((row) => [row.id, partyStation(row)]));
+}
+
+/** The crews of the changed skeds, each person once with all stations of theirs among them. */
+async function readersOf(
+  tx: Tx,
+  changed: readonly StoredSlot[],
+  skeds: ReadonlyMap<StoredSlot, SkedRow>,
+): Promise<CrewMember[]> {
+  const crews = await crewsOfSkeds(
+    tx,
+    changed.map((slot) => skeds.get(slot)!.id),
+  );
+  const readers = new Map<string, CrewMember>();
+  for (const member of [...crews.values()].flat()) {
+    const known = readers.get(member.personId);
+    if (!known) readers.set(member.personId, { ...member, stationIds: [...member.stationIds] });
+    else known.stationIds = [...new Set([...known.stationIds, ...member.stationIds])];
+  }
+  return [...readers.values()];
+}

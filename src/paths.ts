@@ -8,6 +8,9 @@ export const paths = {
   signOut: '/sign-out',
   forgotten: '/forgotten',
   account: '/account',
+  /** Which mail the person wants. */
+  accountMail: '/account/mail',
+  unsubscribe: (token: string) => `/unsubscribe/${token}`,
   confirmMail: (secret: string) => `/confirm/${secret}`,
   useSignInLink: (secret: string) => `/sign-in/link/${secret}`,
   resetPassword: (secret: string) => `/reset/${secret}`,
@@ -39,6 +42,12 @@ export const paths = {
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedTalk: (id: string) => `/skeds/${id}#talk`,
+  skedReport: (id: string) => `/skeds/${id}#report`,
+  live: '/live',
+  /** For somebody without an account: one sked, one person. */
+  answer: (secret: string) => `/answer/${secret}`,
   calendar: '/calendar',
 
   stations: '/stations',
@@ -91,6 +100,7 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
   },
 } as const;

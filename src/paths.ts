@@ -50,6 +50,23 @@ export const paths = {
   answer: (secret: string) => `/answer/${secret}`,
   calendar: '/calendar',
 
+  activities: '/activities',
+  newActivity: '/activities/new',
+  activity: (slug: string) => `/activities/${slug}`,
+  activitySettings: (slug: string) => `/activities/${slug}/settings`,
+  /** Where the coordinator works, step by step. */
+  activityRoster: (slug: string) => `/activities/${slug}/roster`,
+  activityImport: (slug: string) => `/activities/${slug}/import`,
+  activityWishes: (slug: string, band?: string) =>
+    `/activities/${slug}/wishes${band ? `?${new URLSearchParams({ band }).toString()}` : ''}`,
+  activityPlan: (slug: string) => `/activities/${slug}/plan`,
+  activityPublish: (slug: string) => `/activities/${slug}/publish`,
+  /** Where the crew of a station answers; the coordinator for any station. */
+  activityAnswer: (slug: string, stationId?: string) =>
+    `/activities/${slug}/answer${stationId ? `?${new URLSearchParams({ station: stationId }).toString()}` : ''}`,
+  /** The answer of somebody without an account. */
+  rosterAnswer: (secret: string) => `/roster/${secret}`,
+
   stations: '/stations',
   newStation: '/stations/new',
   station: (id: string) => `/stations/${id}`,
@@ -102,5 +119,6 @@ export const paths = {
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
     skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
+    activityPlan: (slug: string) => `/api/v1/activities/${slug}/plan`,
   },
 } as const;

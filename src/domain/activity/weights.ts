@@ -63,3 +63,11 @@ export function planWeights({ spread }: ActivityWeights): PlanWeights {
 export function planPriority(priority: PlanPriority, { favour }: ActivityWeights): PlanPriority {
   return favour === 'chance' ? 2 : priority;
 }
+
+/**
+ * The chance that an option has in the plan. With priorities first, half of it is given to every start, so that the
+ * chance only decides among wishes of one priority.
+ */
+export function planChance(chance: number, { favour }: ActivityWeights): number {
+  return favour === 'priority' ? Math.round(50 + 50 * chance) / 100 : chance;
+}

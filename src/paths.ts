@@ -61,6 +61,15 @@ export const paths = {
     `/activities/${slug}/wishes${band ? `?${new URLSearchParams({ band }).toString()}` : ''}`,
   activityPlan: (slug: string) => `/activities/${slug}/plan`,
   activityPublish: (slug: string) => `/activities/${slug}/publish`,
+  /** Where the plan is moved about by hand. */
+  activityTimetable: (slug: string) => `/activities/${slug}/timetable`,
+  /** The published plan as one station sees it. */
+  activityStation: (slug: string, callSign: string) =>
+    `/activities/${slug}/stations/${encodeURIComponent(callSign)}`,
+  activityRevision: (slug: string, number: number) => `/activities/${slug}/revisions/${number}`,
+  activityCalendar: (slug: string) => `/activities/${slug}/calendar.ics`,
+  activityStationCalendar: (slug: string, callSign: string) =>
+    `/activities/${slug}/stations/${encodeURIComponent(callSign)}/calendar.ics`,
   /** Where the crew of a station answers; the coordinator for any station. */
   activityAnswer: (slug: string, stationId?: string) =>
     `/activities/${slug}/answer${stationId ? `?${new URLSearchParams({ station: stationId }).toString()}` : ''}`,

@@ -10,11 +10,11 @@ import { planMail } from '../mail/templates/planMail';
 import { publishedCalendar } from '../mail/templates/skedCalendar';
 import { skedFacts } from '../mail/templates/skedFacts';
 import type { Services } from '../services';
-import { crewsOfSkeds, type CrewMember } from '../skeds/crews';
 import { partyStation, type PartyStation } from '../skeds/load';
-import { linkToActivity } from './linkToActivity';
+import { makeAnswerLink } from './answerLink';
 import type { PlacedDiff } from './placeSkeds';
 import type { StoredSlot } from './revisions';
+import { rosterRecipients, type RosterRecipient } from './rosterRecipients';
 
 interface Published {
   activity: ActivityRow;
@@ -44,27 +44,29 @@ export async function tellAffected(
     .select('name')
     .where('id', '=', activity.coordinator_id)
     .executeTakeFirstOrThrow();
-  const readers = await readersOf(tx, changed, skeds);
-  for (const reader of readers) {
-    const affected = reader.stationIds
-      .map((id) => ({ id, own: diffOfStation(diff, id) }))
-      .filter(({ own }) => changesAnything(own));
+  const touched = [...stations.keys()].filter((id) => changesAnything(diffOfStation(diff, id)));
+  const readers = new Map<string, RosterRecipient[]>();
+  for (const one of await rosterRecipients(tx, touched)) {
+    readers.set(one.personId, [...(readers.get(one.personId) ?? []), one]);
+  }
+  for (const own of readers.values()) {
+    const reader = own[0]!;
+    const ids = own.map(({ stationId }) => stationId);
     const { subject, content } = planMail({
       title: activity.title,
       first,
       number,
       coordinatorName: coordinator.name,
       note,
-      url: await linkToActivity(tx, services, reader, activity),
-      stations: affected.map(({ id, own }) => ({
-        callSign: callSigns.get(id)!,
-        itinerary: itineraryOf(current, id, callSigns, reader.timeZone),
-        changes: changesOf(own, id, callSigns),
+      url: await linkOf(tx, services, activity, reader),
+      stations: own.map(({ stationId, callSign }) => ({
+        callSign,
+        itinerary: itineraryOf(current, stationId, callSigns, reader.timeZone),
+        changes: changesOf(diffOfStation(diff, stationId), stationId, callSigns),
       })),
     });
-    const ids = new Set(affected.map(({ id }) => id));
     const entries = changed
-      .filter((slot) => ids.has(slot.stationA) || ids.has(slot.stationB))
+      .filter((slot) => ids.includes(slot.stationA) || ids.includes(slot.stationB))
       .map((slot) => entryOf(services, skeds.get(slot)!, slot, stations, reader));
     await enqueueMail(tx, services, {
       to: reader.email,
@@ -79,7 +81,20 @@ export async function tellAffected(
       },
     });
   }
-  return readers.length;
+  return readers.size;
+}
+
+/** People without an account open their itinerary by a link of their own. */
+async function linkOf(
+  tx: Tx,
+  services: Services,
+  activity: ActivityRow,
+  reader: RosterRecipient,
+): Promise<string> {
+  const path = reader.guest
+    ? paths.rosterAnswer(await makeAnswerLink(tx, services, reader.personId, activity))
+    : paths.activityStation(activity.slug, reader.callSign);
+  return services.config.publicUrl + path;
 }
 
 function entryOf(
@@ -87,7 +102,7 @@ function entryOf(
   sked: SkedRow,
   slot: StoredSlot,
   stations: ReadonlyMap<string, PartyStation>,
-  reader: CrewMember,
+  reader: RosterRecipient,
 ) {
   const interval = { startMs: sked.start_at, endMs: sked.end_at };
   return {
@@ -114,23 +129,4 @@ async function stationsOf(
   if (ids.length === 0) return new Map();
   const rows = await tx.selectFrom('station').selectAll().where('id', 'in', ids).execute();
   return new Map(rows.map((row) => [row.id, partyStation(row)]));
-}
-
-/** The crews of the changed skeds, each person once with all stations of theirs among them. */
-async function readersOf(
-  tx: Tx,
-  changed: readonly StoredSlot[],
-  skeds: ReadonlyMap<StoredSlot, SkedRow>,
-): Promise<CrewMember[]> {
-  const crews = await crewsOfSkeds(
-    tx,
-    changed.map((slot) => skeds.get(slot)!.id),
-  );
-  const readers = new Map<string, CrewMember>();
-  for (const member of [...crews.values()].flat()) {
-    const known = readers.get(member.personId);
-    if (!known) readers.set(member.personId, { ...member, stationIds: [...member.stationIds] });
-    else known.stationIds = [...new Set([...known.stationIds, ...member.stationIds])];
-  }
-  return [...readers.values()];
 }

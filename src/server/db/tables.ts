@@ -417,4 +417,5 @@ export type OutboxRow = Selectable<OutboxTable>;
 export type NewOutboxRow = Insertable<OutboxTable>;
 export type ActivityRow = Selectable<ActivityTable>;
 export type ActivityRevisionRow = Selectable<ActivityRevisionTable>;
+export type PlanRunRow = Selectable<PlanRunTable>;
 export type ActivitySlotRow = Selectable<ActivitySlotTable>;

@@ -29,12 +29,19 @@ export interface ActivitySettings {
   answersByMs: number | null;
 }
 
-/** "2027-02-13T18:00" of a form, in UTC, as an instant; what cannot be read stays as it is. */
+/** Day and clock time of a form, in UTC, as an instant; both empty: nothing; what cannot be read stays as it is. */
 export function instantOfForm(value: unknown): unknown {
-  if (typeof value !== 'string') return value;
-  const match = /^(\d{4}-\d{2}-\d{2})[T ](\d{2}:\d{2})$/.exec(value.trim());
-  const atMs = match ? Date.parse(`${match[1]}T${match[2]}:00Z`) : NaN;
-  const there = match && new Date(atMs || 0).toISOString().startsWith(match[1]!);
+  if (typeof value !== 'object' || value === null) return value;
+  const { day, clock } = value as { day?: unknown; clock?: unknown };
+  if (typeof day !== 'string' || typeof clock !== 'string') return value;
+  if (day.trim() === '' && clock.trim() === '') return undefined;
+  const match = /^(\d{4}-\d{2}-\d{2}) ([01]?\d|2[0-3]):?([0-5]\d)$/.exec(
+    `${day.trim()} ${clock.trim() || '00:00'}`,
+  );
+  if (!match) return value;
+  const atMs = Date.parse(`${match[1]}T${match[2]!.padStart(2, '0')}:${match[3]}:00Z`);
+  // 31 February would be some day in March.
+  const there = !Number.isNaN(atMs) && new Date(atMs).toISOString().startsWith(match[1]!);
   return there ? atMs : value;
 }
 
@@ -46,7 +53,7 @@ export function formOfInstant(atMs: number): string {
 const instant = (what: string) =>
   z.preprocess(
     instantOfForm,
-    z.number({ error: `${what} must be a day and a time in UTC, such as 2027-02-13 18:00.` }),
+    z.number({ error: `${what} must be a day and a time in UTC, such as 2027-02-13 and 18:00.` }),
   );
 
 /** A number of a form or of JSON; "" is missing. */
@@ -135,10 +142,7 @@ const shape = record({
   weights: weightsOfForm,
   invitation: words('The invitation', 4000),
   notes: words('The public notes', 4000),
-  answersBy: z.preprocess(
-    (value) => (value === '' ? undefined : value),
-    instant('Answers by').optional(),
-  ),
+  answersBy: z.preprocess(instantOfForm, instant('Answers by').optional()),
 });
 
 /** What of the settings does not fit together, with the field it belongs to. */

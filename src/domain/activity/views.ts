@@ -88,3 +88,14 @@ export interface RosterWish {
   kind: WishKind;
   priority: PlanPriority;
 }
+
+/** A station that can be wished for, and what of the roster others may know. */
+export interface AnswerPartner {
+  stationId: string;
+  place: number;
+  callSign: string;
+  name: string;
+  locator: string;
+  bands: RosterStation['bands'];
+  answer: RosterStation['answer'];
+}

@@ -1,4 +1,9 @@
-import type { ActivityView, RosterStation, RosterWish } from '../../domain/activity/views';
+import type {
+  ActivityView,
+  AnswerPartner,
+  RosterStation,
+  RosterWish,
+} from '../../domain/activity/views';
 import type { Viewer } from '../auth/viewer';
 import { Forbidden, NotFound } from '../errors';
 import type { Services } from '../services';
@@ -6,17 +11,6 @@ import { activityAccess, ownRosterStations } from './access';
 import { readAnswerLink, type AnswerLink } from './answerLink';
 import { loadRoster } from './loadRoster';
 import { activityView, type ActivityRow } from './records';
-
-/** A station that can be wished for, and what of the roster others may know. */
-export interface AnswerPartner {
-  stationId: string;
-  place: number;
-  callSign: string;
-  name: string;
-  locator: string;
-  bands: RosterStation['bands'];
-  answer: RosterStation['answer'];
-}
 
 export interface AnswerPage {
   activity: ActivityView;

@@ -29,7 +29,9 @@ export function activityHours(
 /** The chosen hours as joined intervals. Numbers that are no hour of the activity are ignored. */
 export function intervalsOfHours(span: Interval, chosen: ReadonlySet<number>): Interval[] {
   const hours = activityHours(span, []).flatMap((day) => day.hours);
-  return unionIntervals(hours.filter(({ at }) => chosen.has(at)));
+  return unionIntervals(
+    hours.filter(({ at }) => chosen.has(at)).map(({ startMs, endMs }) => ({ startMs, endMs })),
+  );
 }
 
 function clipped(span: Interval, fromMs: number): Interval {

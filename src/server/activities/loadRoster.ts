@@ -47,7 +47,7 @@ export async function loadRoster(db: Db | Tx, activity: ActivityRow): Promise<Lo
       stationId: row.id,
       place: entry.place,
       callSign: row.call_sign,
-      name: row.name,
+      name: row.name === row.call_sign ? '' : row.name,
       locator: cutLocator(row.locator, row.public_locator_length),
       timeZone: row.time_zone,
       guest: row.guest === 1,

@@ -1,3 +1,4 @@
+import { remindDueRosters } from '../activities/remindRoster';
 import { deliverDue } from '../mail/deliver';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
@@ -30,6 +31,14 @@ export function jobsOf(services: Services): Job[] {
       everyMs: 15 * SECOND_MS,
       run: async () => {
         await lapseDueSkeds(services);
+        return false;
+      },
+    },
+    {
+      name: 'remind rosters before answers are due',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await remindDueRosters(services);
         return false;
       },
     },

@@ -1,4 +1,6 @@
 import { locatorToPosition } from '../../domain/locator/locator';
+import type { SkyLimits } from '../../domain/sky/limits';
+import type { StationHours } from '../../domain/station/hoursSchema';
 import type { Tx } from '../db/transaction';
 import { InvalidInput } from '../errors';
 import { newId } from '../ids';
@@ -22,6 +24,17 @@ export interface Guest {
   /** Whether the person has a confirmed account. */
   confirmed: boolean;
 }
+
+/** What is assumed until they say otherwise: the sky above 5°, and awake from 8 to 23 by their clock. */
+const ASSUMED_SKY: SkyLimits = { elevationFromDeg: 5 };
+const ASSUMED_HOURS: StationHours = {
+  weekly: ([1, 2, 3, 4, 5, 6, 7] as const).map((weekday) => ({
+    weekday,
+    from: '08:00',
+    to: '23:00',
+  })),
+  daysOff: [],
+};
 
 /** Four characters are enough to find windows, and all that is shown of a place somebody else has told. */
 const SHOWN_LOCATOR_LENGTH = 4;
@@ -103,15 +116,15 @@ async function insertStation(
     .values({
       id,
       call_sign: given.callSign,
-      name: '',
+      name: given.callSign,
       latitude_deg: latitudeDeg,
       longitude_deg: longitudeDeg,
       height_m: 0,
       locator: given.locator,
       public_locator_length: SHOWN_LOCATOR_LENGTH,
       time_zone: timeZoneOf(given),
-      sky_json: '{}',
-      hours_json: JSON.stringify({ weekly: null, daysOff: [] }),
+      sky_json: JSON.stringify(ASSUMED_SKY),
+      hours_json: JSON.stringify(ASSUMED_HOURS),
       listed: 0,
       guest: 1,
       created_at: now(),

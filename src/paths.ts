@@ -8,6 +8,9 @@ export const paths = {
   signOut: '/sign-out',
   forgotten: '/forgotten',
   account: '/account',
+  /** Which mail the person wants. */
+  accountMail: '/account/mail',
+  unsubscribe: (token: string) => `/unsubscribe/${token}`,
   confirmMail: (secret: string) => `/confirm/${secret}`,
   useSignInLink: (secret: string) => `/sign-in/link/${secret}`,
   resetPassword: (secret: string) => `/reset/${secret}`,
@@ -40,6 +43,12 @@ export const paths = {
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
     `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedTalk: (id: string) => `/skeds/${id}#talk`,
+  skedReport: (id: string) => `/skeds/${id}#report`,
+  live: '/live',
+  /** For somebody without an account: one sked, one person. */
+  answer: (secret: string) => `/answer/${secret}`,
   calendar: '/calendar',
 
   stations: '/stations',
@@ -92,6 +101,7 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
   },
 } as const;

@@ -103,5 +103,7 @@ export const paths = {
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
     skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
+    /** Where a mail server hands in the mails that answer ours. */
+    inboundMail: '/api/v1/inbound/mail',
   },
 } as const;

@@ -38,6 +38,7 @@ export const paths = {
     `/outlook?${new URLSearchParams({ here, there, band }).toString()}`,
 
   skeds: '/skeds',
+  skedFile: (id: string) => `/skeds/${id}/sked.ics`,
   sked: (id: string) => `/skeds/${id}`,
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
@@ -50,6 +51,7 @@ export const paths = {
   /** For somebody without an account: one sked, one person. */
   answer: (secret: string) => `/answer/${secret}`,
   calendar: '/calendar',
+  feed: (secret: string) => `/feeds/${secret}.ics`,
 
   stations: '/stations',
   newStation: '/stations/new',

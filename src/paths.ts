@@ -38,9 +38,11 @@ export const paths = {
     `/outlook?${new URLSearchParams({ here, there, band }).toString()}`,
 
   skeds: '/skeds',
+  skedFile: (id: string) => `/skeds/${id}/sked.ics`,
   sked: (id: string) => `/skeds/${id}`,
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
-  skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
+  skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
+    `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
   skedSheet: (id: string) => `/skeds/${id}/sheet`,
   skedTalk: (id: string) => `/skeds/${id}#talk`,
@@ -49,6 +51,7 @@ export const paths = {
   /** For somebody without an account: one sked, one person. */
   answer: (secret: string) => `/answer/${secret}`,
   calendar: '/calendar',
+  feed: (secret: string) => `/feeds/${secret}.ics`,
 
   activities: '/activities',
   newActivity: '/activities/new',
@@ -131,5 +134,7 @@ export const paths = {
     /** The draft of its plan, as the timetable changes it. */
     activityDraft: (slug: string) => `/api/v1/activities/${slug}/draft`,
     activityPlan: (slug: string) => `/api/v1/activities/${slug}/plan`,
+    /** Where a mail server hands in the mails that answer ours. */
+    inboundMail: '/api/v1/inbound/mail',
   },
 } as const;

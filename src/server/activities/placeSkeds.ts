@@ -244,6 +244,7 @@ async function addEvent(
       end_at: sked.end_at,
       words: kind === 'agreed' ? '' : `Plan of “${activity.title}”.`,
       at: atMs,
+      sequence: sked.sequence,
     })
     .execute();
 }

@@ -10,6 +10,7 @@ import { planMail } from '../mail/templates/planMail';
 import { publishedCalendar } from '../mail/templates/skedCalendar';
 import { skedFacts } from '../mail/templates/skedFacts';
 import type { Services } from '../services';
+import { replyAddress } from '../skeds/replyAddress';
 import { partyStation, type PartyStation } from '../skeds/load';
 import { makeAnswerLink } from './answerLink';
 import type { PlacedDiff } from './placeSkeds';
@@ -77,7 +78,7 @@ export async function tellAffected(
       activityId: activity.id,
       calendar: {
         method: 'PUBLISH',
-        body: publishedCalendar(activity.title, services.config.smtp.from, entries),
+        body: publishedCalendar(activity.title, entries),
       },
     });
   }
@@ -112,7 +113,7 @@ function entryOf(
       interval,
       config.publicUrl + paths.sked(sked.id),
     ),
-    recipient: reader,
+    organizer: replyAddress(config, sked.uid, reader.personId) ?? config.smtp.from,
     entry: {
       ...calendarOf({ state: sked.state, sequence: sked.sequence, ...interval }),
       asked: false,

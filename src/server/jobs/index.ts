@@ -1,4 +1,5 @@
 import { remindDueRosters } from '../activities/remindRoster';
+import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
@@ -34,6 +35,15 @@ export function jobsOf(services: Services): Job[] {
         return false;
       },
     },
+    ...(services.config.inbound.folder === null
+      ? []
+      : [
+          {
+            name: 'read mails that came in',
+            everyMs: 5 * SECOND_MS,
+            run: async () => (await readInboundFolder(services)) > 0,
+          },
+        ]),
     {
       name: 'remind rosters before answers are due',
       everyMs: 60 * SECOND_MS,

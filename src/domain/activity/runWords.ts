@@ -1,4 +1,4 @@
-import { formatDuration, formatNumber } from '../time/format';
+import { formatNumber } from '../time/format';
 import type { PlanPhase, PlanProgress } from './plan/types';
 import type { RunState, RunView } from './run';
 
@@ -54,6 +54,6 @@ export function progressFacts(
       progress.bound === null ? 'not known yet' : formatNumber(progress.bound, 1),
     ],
     ['At most this is missing', gapText(progress.gap)],
-    ['Time', formatDuration(progress.elapsedMs)],
+    ['Time', `${formatNumber(progress.elapsedMs / 1000)} s`],
   ];
 }

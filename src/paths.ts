@@ -128,6 +128,8 @@ export const paths = {
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
     skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
+    /** The draft of its plan, as the timetable changes it. */
+    activityDraft: (slug: string) => `/api/v1/activities/${slug}/draft`,
     activityPlan: (slug: string) => `/api/v1/activities/${slug}/plan`,
   },
 } as const;

@@ -1,3 +1,6 @@
+import { beginDraft } from '../server/activities/beginDraft';
+import { dropDraft } from '../server/activities/dropDraft';
+import { publishRevision, publishSchema } from '../server/activities/publishRevision';
 import { z } from 'zod';
 import { activitySettingsSchema, nestedFields } from '../domain/activity/settings';
 import { openToAll, requirePerson, requireRole } from '../server/auth/guards';
@@ -39,6 +42,8 @@ function rosterDone(slug: string, what: string, callSign = ''): { goTo: string }
 function settingsIn({ slug: _slug, version: _version, ...fields }: Record<string, string>) {
   return checked(activitySettingsSchema, nestedFields(fields));
 }
+
+const ofActivity = z.object({ slug: z.string().max(200) });
 
 export const activities = {
   create: formAction(formFields, async (fields, context) => {
@@ -133,5 +138,26 @@ export const activities = {
     await limitRate('mail/client', clientKey(context), FRESH_LINKS_PER_MINUTE);
     await mailFreshLink(services(), secret);
     return { mailed: true };
+  }),
+
+  publish: formAction(
+    publishSchema.extend(ofActivity.shape),
+    async ({ slug, ...input }, context) => {
+      const viewer = requireRole(context, 'coordinator');
+      const { number } = await publishRevision(services(), viewer, slug, input);
+      return { goTo: `${paths.activity(slug)}?done=published${number}` };
+    },
+  ),
+
+  beginDraft: formAction(ofActivity, async ({ slug }, context) => {
+    const viewer = requireRole(context, 'coordinator');
+    await beginDraft(services(), viewer, slug);
+    return { goTo: paths.activityTimetable(slug) };
+  }),
+
+  dropDraft: formAction(ofActivity, async ({ slug }, context) => {
+    const viewer = requireRole(context, 'coordinator');
+    await dropDraft(services(), viewer, slug);
+    return { goTo: paths.activityPlan(slug) };
   }),
 };

@@ -50,14 +50,14 @@ type DraftChange = z.output<typeof draftChangeSchema>['change'];
 /**
  * Changes the draft by hand: puts one slot somewhere else or into the plan, takes one out, or fixes it. A change after
  * which two slots would collide, a rest would be missing, or a station's Moon would not be there is refused in words, so
- * that a draft is right at any time. Throws `NotFound`, `Forbidden`, or `Conflict`.
+ * that a draft is right at any time. Returns the draft's next version and the figures of a slot that was put somewhere. Throws `NotFound`, `Forbidden`, or `Conflict`.
  */
 export async function changeDraft(
   services: Services,
   viewer: Pick<Viewer, 'id' | 'role'>,
   slug: string,
   { version, change }: z.output<typeof draftChangeSchema>,
-): Promise<{ version: number }> {
+): Promise<{ version: number; slot: { chance: number | null; marginDb: number | null } | null }> {
   return inTransaction(services.db, async (tx) => {
     const activity = await requireEditor(tx, viewer, slug);
     const ground = await draftGround(tx, activity.id);
@@ -72,29 +72,30 @@ export async function changeDraft(
     if (present && present.startMs <= nowMs) {
       throw new Conflict('This slot has begun, so it stays as it is.');
     }
-    await apply(tx, ground, present, change, nowMs);
+    const slot = await apply(tx, ground, present, change, nowMs);
     await tx
       .updateTable('activity_revision')
       .set({ version: version + 1 })
       .where('id', '=', row.id)
       .execute();
-    return { version: version + 1 };
+    return { version: version + 1, slot };
   });
 }
 
+/** Returns the figures of the slot that was put somewhere, else null. */
 async function apply(
   tx: Tx,
   ground: DraftGround,
   present: StoredSlot | undefined,
   change: DraftChange,
   nowMs: number,
-): Promise<void> {
+): Promise<{ chance: number | null; marginDb: number | null } | null> {
   if (change.kind === 'place') {
     const placed = slotAt(ground, change, nowMs);
     const pinned = change.pinned ?? present?.pinned ?? false;
     if (present) await tx.deleteFrom('activity_slot').where('id', '=', present.id).execute();
     await insertSlot(tx, ground.draft.row.id, { ...placed, pinned });
-    return;
+    return { chance: placed.chance, marginDb: placed.marginDb };
   }
   if (!present) throw new Conflict('This wish has no slot in the plan.');
   if (change.kind === 'remove') {
@@ -106,6 +107,7 @@ async function apply(
       .where('id', '=', present.id)
       .execute();
   }
+  return null;
 }
 
 /** The slot with its figures. Throws `Conflict` with everything that stands against it. */

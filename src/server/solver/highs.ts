@@ -1,5 +1,5 @@
-import loadHighs, { type Highs, type HighsCallbackMap, type Model } from 'highs';
-import type { PlanModel } from '../../domain/activity/plan/model';
+import loadHighs, { type Highs, type HighsCallbackMap, type Model, type SparseMatrix } from 'highs';
+import type { PlanModel, PlanRow } from '../../domain/activity/plan/model';
 
 export { loadHighs, type Highs };
 
@@ -9,24 +9,37 @@ export interface HighsControl {
   stop: () => boolean;
 }
 
-/** The linear relaxation: values of the columns and duals of the rows, or null when it was not solved to its end. */
-export function solveRelaxation(
-  highs: Highs,
-  model: PlanModel,
-  control: HighsControl,
-): { columns: Float64Array; duals: Float64Array } | null {
-  return highs.withModel((instance) => {
+export interface RelaxationControl extends HighsControl {
+  /**
+   * Gets values of the columns and duals of the rows (those added included) after each round; the rows that it returns
+   * are added and the relaxation solved again.
+   */
+  onRound: (columns: Float64Array, duals: Float64Array) => readonly PlanRow[];
+}
+
+/** Solves the linear relaxation, again and again while rows are added; `model` gets them too. */
+export function solveRelaxation(highs: Highs, model: PlanModel, control: RelaxationControl): void {
+  highs.withModel((instance) => {
     pass(highs, instance, model, false);
     // Rows that others imply are left out already; presolve takes longer than it saves.
     instance.options.set({ presolve: 'off', solver: 'simplex', time_limit: control.timeLimitS });
     const { simplexInterrupt } = highs.constants.callbackType;
-    const result = instance.run(interruptible(simplexInterrupt, control.stop));
-    if (result.modelStatus !== highs.constants.modelStatus.optimal) return null;
-    const solution = instance.getSolution();
-    const columns = Float64Array.from(solution.colValue);
-    const duals = Float64Array.from(solution.rowDual);
-    if (columns.length !== model.columns || duals.length !== model.rows) return null;
-    return { columns, duals };
+    for (;;) {
+      const result = instance.run(interruptible(simplexInterrupt, control.stop));
+      if (result.modelStatus !== highs.constants.modelStatus.optimal) return;
+      const solution = instance.getSolution();
+      const columns = Float64Array.from(solution.colValue);
+      const duals = Float64Array.from(solution.rowDual);
+      if (columns.length !== model.columns || duals.length !== model.rows.length) return;
+      const rows = control.onRound(columns, duals);
+      if (rows.length === 0) return;
+      model.rows.push(...rows);
+      instance.addRows({
+        lower: Float64Array.from(rows, ({ upper, equal }) => (equal ? upper : -highs.infinity)),
+        upper: Float64Array.from(rows, ({ upper }) => upper),
+        matrix: byRow(rows, model.columns),
+      });
+    }
   });
 }
 
@@ -99,27 +112,41 @@ function pass(highs: Highs, instance: Model, model: PlanModel, whole: boolean): 
   instance.options.set({ output_flag: false, random_seed: 1 });
   instance.passModel({
     numCols: columns,
-    numRows: rows,
+    numRows: rows.length,
     sense: highs.constants.objectiveSense.maximize,
     colCost: model.cost,
     colLower: model.lower,
     colUpper: new Float64Array(columns).fill(1),
-    rowLower: model.rowUpper.map((upper, row) => (model.equal[row] ? upper : -highs.infinity)),
-    rowUpper: model.rowUpper,
-    matrix: {
-      format: 'csc',
-      numRows: rows,
-      numCols: columns,
-      starts: model.starts,
-      indices: model.indices,
-      values: model.values,
-    },
+    rowLower: rows.map(({ upper, equal }) => (equal ? upper : -highs.infinity)),
+    rowUpper: rows.map(({ upper }) => upper),
+    matrix: byRow(rows, columns),
     ...(whole ? { integrality: new Int32Array(columns).fill(1, 0, options) } : {}),
   });
   const { numCols } = instance.getDimensions();
   if (numCols !== columns) {
     throw new Error(`The model has ${columns} columns, but HiGHS took ${numCols}.`);
   }
+}
+
+function byRow(rows: readonly PlanRow[], columns: number): SparseMatrix {
+  const starts = [0];
+  const indices: number[] = [];
+  const values: number[] = [];
+  for (const row of rows) {
+    row.columns.forEach((column, at) => {
+      indices.push(column);
+      values.push(row.signs?.[at] ?? 1);
+    });
+    starts.push(indices.length);
+  }
+  return {
+    format: 'csr',
+    numRows: rows.length,
+    numCols: columns,
+    starts: Int32Array.from(starts),
+    indices: Int32Array.from(indices),
+    values: Float64Array.from(values),
+  };
 }
 
 function rounded(columns: Float64Array): Float64Array {

@@ -2,7 +2,14 @@ import { fitsTogether, gapOf, planOf } from '../../domain/activity/plan/answer';
 import { Board } from '../../domain/activity/plan/board';
 import { greedyBoard } from '../../domain/activity/plan/greedy';
 import { layGrid, type PlanGrid } from '../../domain/activity/plan/grid';
-import { columnsOf, planModel } from '../../domain/activity/plan/model';
+import {
+  columnsOf,
+  dualBound,
+  planModel,
+  type DualBound,
+  type PlanRow,
+} from '../../domain/activity/plan/model';
+import { oddCuts } from '../../domain/activity/plan/oddCuts';
 import { Prices } from '../../domain/activity/plan/prices';
 import {
   intoReduced,
@@ -10,7 +17,7 @@ import {
   reduceGrid,
   type ReducedGrid,
 } from '../../domain/activity/plan/reduce';
-import { restCuts, type RestCut } from '../../domain/activity/plan/restCuts';
+import { restCuts } from '../../domain/activity/plan/restCuts';
 import { anneal } from '../../domain/activity/plan/search';
 import type {
   Plan,
@@ -34,6 +41,7 @@ export interface SolveControl {
 /** Up to so many options the relaxation is solved before anything else is tried for long. */
 const SMALL = 12_000;
 const PRICE_ROUNDS = 50;
+const CUT_ROUNDS = 30;
 
 /**
  * Plans in stages, the best plan and the best bound carried from one to the next: first fit, annealing, prices, the
@@ -51,7 +59,10 @@ class Solver {
   #value = -Infinity;
   #bound = Infinity;
   #inQuestion: ReducedGrid;
-  #prices: Prices;
+  /** About the options in question. */
+  #proof: DualBound | null = null;
+  /** Rows for the options in question that are not the model's own. */
+  #cuts: PlanRow[] = [];
   #seed = 1;
 
   constructor(
@@ -64,7 +75,6 @@ class Solver {
     this.#best = new Int32Array(this.#grid.wishes).fill(-1);
     const all = Int32Array.from(this.#grid.optionWish, (_, option) => option);
     this.#inQuestion = { grid: this.#grid, options: all };
-    this.#prices = new Prices(this.#grid);
   }
 
   run(): PlanResult {
@@ -105,7 +115,7 @@ class Solver {
       this.#anneal(1000, 20, 100_000 + 50 * this.#inQuestion.options.length);
       if (this.#value === before && round > 0) break;
     }
-    if (!this.#over()) this.#prove();
+    this.#branch();
   }
 
   #anneal(fromUnits: number, toUnits: number, moves: number): void {
@@ -119,54 +129,70 @@ class Solver {
   }
 
   #price(rounds: number): void {
+    const prices = new Prices(this.#inQuestion.grid);
     for (let done = 0; done < rounds && !this.#over(); done += PRICE_ROUNDS) {
-      this.#prices.improve(PRICE_ROUNDS, this.#value);
-      this.#lower(this.#prices.bound, 'bound');
+      prices.improve(PRICE_ROUNDS, this.#value);
+      this.#lower(prices.bound, 'bound');
     }
+    this.#prove(prices.proof());
   }
 
-  /** The linear relaxation's duals are the best prices there are. */
+  /** The linear relaxation, with rows added that it breaks and no plan does. */
   #relax(): void {
     if (this.#over()) return;
     this.#reduce();
     const { grid } = this.#inQuestion;
-    const model = planModel(grid, this.#prices);
-    const answer = solveRelaxation(this.highs, model, {
+    const model = planModel(grid);
+    const rows = model.rows.length;
+    let rounds = 0;
+    solveRelaxation(this.highs, model, {
       timeLimitS: this.#leftS(),
       stop: () => this.#cut(),
+      onRound: (columns, duals) => {
+        this.#prove(dualBound(model, duals));
+        rounds += 1;
+        return this.#over() || rounds > CUT_ROUNDS ? [] : oddCuts(grid, columns);
+      },
     });
-    if (!answer) return;
-    const offered = new Float64Array(this.#prices.length);
-    model.prices.forEach((at, row) => {
-      if (at >= 0) offered[at] = answer.duals[row]!;
-    });
-    this.#prices.offer(offered);
-    this.#lower(this.#prices.bound, 'bound');
+    this.#cuts = model.rows.slice(rows);
+  }
+
+  /** Takes a proof about the options in question. */
+  #prove(proof: DualBound): void {
+    if (!this.#proof || proof.bound < this.#proof.bound) this.#proof = proof;
+    this.#lower(proof.bound, 'bound');
   }
 
   /** Leaves only options that could stand in a better plan, and those of the best one. */
   #reduce(): void {
-    const { loss } = this.#prices.reduced();
-    const slack = this.#prices.bound - this.#value;
-    const inside = new Set(intoReduced(this.#inQuestion, this.#best));
-    const keep = this.#inQuestion.options.filter(
-      (_, option) => loss[option]! <= slack || inside.has(option),
+    const proof = this.#proof;
+    if (!proof) return;
+    const slack = proof.bound - this.#value;
+    const before = this.#inQuestion;
+    const inside = new Set(intoReduced(before, this.#best));
+    const places = Int32Array.from(before.options, (_, place) => place).filter(
+      (place) => proof.loss[place]! <= slack || inside.has(place),
     );
-    if (keep.length === this.#inQuestion.options.length) return;
-    const before = this.#prices;
-    this.#inQuestion = reduceGrid(this.#grid, keep);
-    this.#prices = new Prices(this.#inQuestion.grid);
-    this.#prices.offer(before.best());
-    this.#lower(this.#prices.bound, 'bound');
+    if (places.length === before.options.length) return;
+    this.#inQuestion = reduceGrid(
+      this.#grid,
+      places.map((place) => before.options[place]!),
+    );
+    this.#proof = { bound: proof.bound, loss: Float64Array.from(places, (p) => proof.loss[p]!) };
+    const placeOf = new Map([...places].map((place, at) => [place, at]));
+    this.#cuts = this.#cuts.map((row) => ({
+      ...row,
+      columns: row.columns.flatMap((column) => placeOf.get(column) ?? []),
+    }));
   }
 
   /** Branch and bound; runs that are too long for a pause are cut off as they appear. */
-  #prove(): void {
-    const cuts: RestCut[] = [];
+  #branch(): void {
     while (!this.#over()) {
       this.#reduce();
       const { grid } = this.#inQuestion;
-      const model = planModel(grid, this.#prices, cuts);
+      const model = planModel(grid);
+      model.rows.push(...this.#cuts);
       const board = new Board(grid);
       board.load(intoReduced(this.#inQuestion, this.#best));
       const answer = solveMip(this.highs, model, columnsOf(model, board), {
@@ -191,7 +217,7 @@ class Solver {
       }
       const more = restCuts(grid, chosen);
       if (more.length === 0 || !answer.proven) return;
-      cuts.push(...more);
+      this.#cuts.push(...more);
     }
   }
 

@@ -46,8 +46,12 @@ export function startPlanRun(problem: PlanProblem, options: PlanRunOptions = {})
   const thread = new Worker(new URL('./thread.mjs', import.meta.url), { workerData, execArgv: [] });
   let stopped = false;
   let hardStop: NodeJS.Timeout | undefined;
-  let limit: NodeJS.Timeout | undefined;
   const known = new KnownSoFar();
+  const endSoon = () => {
+    Atomics.store(new Int32Array(stopFlag), 0, 1);
+    hardStop ??= setTimeout(() => void thread.terminate(), graceS * 1000);
+  };
+  const limit = setTimeout(endSoon, (timeLimitS + STARTING_S) * 1000);
 
   const done = new Promise<PlanResult>((resolve, reject) => {
     thread.on('message', (message: ThreadMessage) => {
@@ -71,11 +75,6 @@ export function startPlanRun(problem: PlanProblem, options: PlanRunOptions = {})
     void thread.terminate();
   });
 
-  const endSoon = () => {
-    Atomics.store(new Int32Array(stopFlag), 0, 1);
-    hardStop ??= setTimeout(() => void thread.terminate(), graceS * 1000);
-  };
-  limit = setTimeout(endSoon, (timeLimitS + STARTING_S) * 1000);
   const stop = () => {
     stopped = true;
     endSoon();

@@ -15,13 +15,21 @@ export type ViolationKind =
   | 'bandChange'
   | 'rest'
   | 'tooMany'
-  | 'pinMoved';
+  | 'pinMoved'
+  | 'wrongWorth';
 
 export interface PlanViolation {
   kind: ViolationKind;
   sentence: string;
   /** The slots that it is about. */
   slots: PlanSlot[];
+}
+
+/** What an independent look at a plan finds: it is refused unless `violations` is empty. */
+export interface PlanCheck {
+  violations: PlanViolation[];
+  /** Sum of priority × chance, counted anew. */
+  worth: number;
 }
 
 /** What keeps a wish out of the plan. */

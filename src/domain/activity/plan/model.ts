@@ -1,81 +1,75 @@
 import type { Board } from './board';
+import { rowFamilies } from './families';
 import type { PlanGrid } from './grid';
-import type { Prices } from './prices';
-import type { RestCut } from './restCuts';
+
+/** Of these columns, each with its sign, the sum is at most `upper`, or exactly that. */
+export interface PlanRow {
+  columns: number[];
+  /** null: all +1. */
+  signs: number[] | null;
+  upper: number;
+  equal: boolean;
+}
 
 /**
- * The plan as a linear program over 0 and 1. Columns v0 … are the options, then for every
- * station one column per contact with what that contact adds (`PlanGrid.gain`; falling, so they need not be whole).
- * Maximise; rows have no lower side but `equal` ones. Entries by column (CSC).
+ * The plan as a linear program, to be maximised, all columns from 0 to 1. The first are the grid's options, whole
+ * numbers; then follows for every station one column per contact with what that contact adds (`PlanGrid.gain`; it
+ * falls from one contact to the next, so they need not be whole).
  */
 export interface PlanModel {
-  /** How many of the columns, the first ones, are options. */
   options: number;
   columns: number;
-  rows: number;
   cost: Float64Array;
-  /** Lowest value of a column: 1 for a pinned option, else 0. The greatest is 1. */
+  /** 1 for a pinned option, else 0. */
   lower: Float64Array;
-  rowUpper: Float64Array;
-  /** Of rows that are exactly their upper side: 1. */
-  equal: Uint8Array;
-  starts: Int32Array;
-  indices: Int32Array;
-  values: Float64Array;
-  /** Where the price of each row stands in `Prices`; −1: nowhere. */
-  prices: Int32Array;
+  rows: PlanRow[];
   /** First gain column of each station, and the end. */
   gainFirsts: Int32Array;
 }
 
-export function planModel(
-  grid: PlanGrid,
-  prices: Prices,
-  cuts: readonly RestCut[] = [],
-): PlanModel {
-  const list = new RowList();
+/** One row for each wish, the rows of all families that are not held by another, and what a station's contacts add. */
+export function planModel(grid: PlanGrid): PlanModel {
+  const rows: PlanRow[] = [];
   for (let wish = 0; wish < grid.wishes; wish += 1) {
     const from = grid.firsts[wish]!;
     const count = grid.firsts[wish + 1]! - from;
-    list.atMost(
-      Array.from({ length: count }, (_, at) => from + at),
-      1,
-    );
+    if (count > 1)
+      rows.push(
+        atMost(
+          1,
+          Array.from({ length: count }, (_, at) => from + at),
+        ),
+      );
   }
-  const own = optionsByStation(grid);
-  for (let station = 0; station < grid.stations; station += 1) {
-    stationRows(grid, station, own[station]!, prices, list);
-  }
-  for (const cut of cuts) {
-    list.atMost(cut.options, cut.capacity);
-  }
-  return finish(grid, own, prices, list);
+  const cost = [...grid.optionValue];
+  const gainFirsts = new Int32Array(grid.stations + 1);
+  optionsByStation(grid).forEach((own, station) => {
+    rows.push(...stationRows(grid, own));
+    gainFirsts[station] = cost.length;
+    const columns = [...own];
+    const signs = own.map(() => 1);
+    for (let n = 1; n <= grid.most[station]!; n += 1) {
+      columns.push(cost.length);
+      signs.push(-1);
+      cost.push(grid.gain[n]! - grid.gain[n - 1]!);
+    }
+    if (own.length > 0) rows.push({ columns, signs, upper: 0, equal: true });
+  });
+  gainFirsts[grid.stations] = cost.length;
+  const lower = new Float64Array(cost.length);
+  for (const option of grid.pinned) if (option >= 0) lower[option] = 1;
+  return {
+    options: grid.optionWish.length,
+    columns: cost.length,
+    cost: Float64Array.from(cost),
+    lower,
+    rows,
+    gainFirsts,
+  };
 }
 
-class RowList {
-  readonly columns: number[][] = [];
-  readonly signs: (number[] | null)[] = [];
-  readonly upper: number[] = [];
-  readonly equal: number[] = [];
-  readonly prices: number[] = [];
-
-  /** Rows that cannot be broken are left out. */
-  atMost(columns: readonly number[], capacity: number, price = -1): void {
-    if (columns.length <= capacity) return;
-    this.columns.push([...columns]);
-    this.signs.push(null);
-    this.upper.push(capacity);
-    this.equal.push(0);
-    this.prices.push(price);
-  }
-
-  exactly(columns: readonly number[], signs: readonly number[], price: number): void {
-    this.columns.push([...columns]);
-    this.signs.push([...signs]);
-    this.upper.push(0);
-    this.equal.push(1);
-    this.prices.push(price);
-  }
+export function atMost(upper: number, columns: number[]): PlanRow {
+  return { columns, signs: null, upper, equal: false };
 }
 
 /** Options at each station, by step. */
@@ -91,14 +85,8 @@ export function optionsByStation(grid: PlanGrid): number[][] {
   return own;
 }
 
-function stationRows(
-  grid: PlanGrid,
-  station: number,
-  own: readonly number[],
-  prices: Prices,
-  list: RowList,
-): void {
-  prices.families.forEach(({ offsets, length, capacity }, family) => {
+function stationRows(grid: PlanGrid, own: readonly number[]): PlanRow[] {
+  return rowFamilies(grid).flatMap(({ offsets, length, capacity }) => {
     // The row at p holds an option from p = step − offset − length + 1 to p = step − offset.
     const byStep = new Map<number, number[]>();
     for (const option of own) {
@@ -109,14 +97,16 @@ function stationRows(
         else byStep.set(p, [option]);
       }
     }
-    const rows = [...byStep].sort(([one], [other]) => one - other);
-    rows.forEach(([p, columns], at) => {
-      const before = rows[at - 1]?.[1];
-      const after = rows[at + 1]?.[1];
-      if (before && within(columns, before) && before.length > columns.length) return;
-      if (after && within(columns, after)) return;
-      list.atMost(columns, capacity, prices.rowAt(family, station, p));
-    });
+    const rows = [...byStep].sort(([one], [other]) => one - other).map(([, columns]) => columns);
+    return rows
+      .filter((columns, at) => {
+        if (columns.length <= capacity) return false;
+        const before = rows[at - 1];
+        const after = rows[at + 1];
+        if (before && before.length > columns.length && within(columns, before)) return false;
+        return !(after && within(columns, after));
+      })
+      .map((columns) => atMost(capacity, columns));
   });
 }
 
@@ -124,69 +114,6 @@ function within(few: readonly number[], many: readonly number[]): boolean {
   if (few.length > many.length) return false;
   const held = new Set(many);
   return few.every((column) => held.has(column));
-}
-
-function finish(
-  grid: PlanGrid,
-  own: readonly (readonly number[])[],
-  prices: Prices,
-  list: RowList,
-): PlanModel {
-  const cost: number[] = [...grid.optionValue];
-  const lower: number[] = Array.from(grid.optionWish, (wish, option) =>
-    grid.pinned[wish] === option ? 1 : 0,
-  );
-  const gainFirsts = new Int32Array(grid.stations + 1);
-  for (let station = 0; station < grid.stations; station += 1) {
-    gainFirsts[station] = cost.length;
-    const wishes = new Set(own[station]!.map((option) => grid.optionWish[option]!));
-    const most = Math.min(grid.most[station]!, wishes.size);
-    const columns = [...own[station]!];
-    const signs = columns.map(() => 1);
-    for (let n = 1; n <= most; n += 1) {
-      columns.push(cost.length);
-      signs.push(-1);
-      cost.push(grid.gain[n]! - grid.gain[n - 1]!);
-      lower.push(0);
-    }
-    if (columns.length > 0) list.exactly(columns, signs, prices.contactAt(station));
-  }
-  gainFirsts[grid.stations] = cost.length;
-  return {
-    options: grid.optionWish.length,
-    columns: cost.length,
-    rows: list.columns.length,
-    cost: Float64Array.from(cost),
-    lower: Float64Array.from(lower),
-    rowUpper: Float64Array.from(list.upper),
-    equal: Uint8Array.from(list.equal),
-    prices: Int32Array.from(list.prices),
-    gainFirsts,
-    ...byColumn(cost.length, list),
-  };
-}
-
-function byColumn(
-  columns: number,
-  { columns: rows, signs }: RowList,
-): Pick<PlanModel, 'starts' | 'indices' | 'values'> {
-  const starts = new Int32Array(columns + 1);
-  for (const row of rows) for (const column of row) starts[column + 1] = starts[column + 1]! + 1;
-  for (let column = 0; column < columns; column += 1) {
-    starts[column + 1] = starts[column + 1]! + starts[column]!;
-  }
-  const next = starts.slice();
-  const indices = new Int32Array(starts[columns]!);
-  const values = new Float64Array(starts[columns]!);
-  rows.forEach((row, index) => {
-    row.forEach((column, at) => {
-      const place = next[column]!;
-      next[column] = place + 1;
-      indices[place] = index;
-      values[place] = signs[index]?.[at] ?? 1;
-    });
-  });
-  return { starts, indices, values };
 }
 
 /** The columns' values for a board. */
@@ -198,4 +125,35 @@ export function columnsOf(model: PlanModel, board: Board): Float64Array {
     for (let n = 0; n < board.count[station]!; n += 1) values[first + n] = 1;
   }
   return values;
+}
+
+/** What prices of the rows prove: no plan is worth more than `bound`, and one with an option by its `loss` less. */
+export interface DualBound {
+  bound: number;
+  loss: Float64Array;
+}
+
+/**
+ * Counts the bound that duals of the rows give, with our own sums, so that nothing rests on the tolerances of whoever
+ * found them: for any prices, of no less than 0 where a row is not exact, plans are bounded by what the rows cost and
+ * what each column is worth above its price.
+ */
+export function dualBound(model: PlanModel, duals: Float64Array): DualBound {
+  const net = model.cost.slice();
+  let bound = 0;
+  model.rows.forEach(({ columns, signs, upper, equal }, row) => {
+    const price = equal ? duals[row]! : Math.max(duals[row]!, 0);
+    if (price === 0) return;
+    bound += price * upper;
+    columns.forEach((column, at) => {
+      net[column] = net[column]! - (signs?.[at] ?? 1) * price;
+    });
+  });
+  const loss = new Float64Array(model.options);
+  for (let column = 0; column < model.columns; column += 1) {
+    const value = net[column]!;
+    bound += model.lower[column] === 1 ? value : Math.max(value, 0);
+    if (column < model.options) loss[column] = Math.max(-value, 0);
+  }
+  return { bound, loss };
 }

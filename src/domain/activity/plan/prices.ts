@@ -1,5 +1,6 @@
 import { rowFamilies, type RowFamily } from './families';
 import type { PlanGrid } from './grid';
+import type { DualBound } from './model';
 
 /**
  * Prices for the hours of every station (Lagrange multipliers of the rows), found by the volume method of Barahona and
@@ -54,40 +55,6 @@ export class Prices {
   /** The least bound so far, in units. */
   get bound(): number {
     return this.#bestBound;
-  }
-
-  /** Prices as they stand in the array of all rows: where that of a row of a family is, and that of a contact. */
-  rowAt(family: number, station: number, p: number): number {
-    return (family * this.grid.stations + station) * this.#stride + this.#pad + p;
-  }
-
-  contactAt(station: number): number {
-    return this.#rows + station;
-  }
-
-  get length(): number {
-    return this.#rows + this.grid.stations;
-  }
-
-  /** The prices that gave the bound; they serve a grid with fewer options too. */
-  best(): Float64Array {
-    return this.#best.slice();
-  }
-
-  /** Takes prices found elsewhere when their bound is better. Returns the bound that they give. */
-  offer(prices: Float64Array): number {
-    this.#tried.set(prices);
-    for (let row = 0; row < this.#rows; row += 1) {
-      if (this.#tried[row]! < 0) this.#tried[row] = 0;
-    }
-    const bound = this.#evaluate(this.#tried);
-    if (bound < this.#bestBound) {
-      this.#bestBound = bound;
-      this.#best.set(this.#tried);
-      this.#mean.set(this.#use);
-      this.#started = true;
-    }
-    return bound;
   }
 
   /** Betters the prices by so many rounds; `target`: value of the best plan known. Returns the bound. */
@@ -273,26 +240,21 @@ export class Prices {
     }
   }
 
-  /**
-   * How much less than the bound every plan is at least in which the option stands, by option, at the best prices; and
-   * what an option is worth above its price.
-   */
-  reduced(): { loss: Float64Array; net: Float64Array } {
+  /** What the best prices prove. */
+  proof(): DualBound {
     const { grid } = this;
     this.#costs(this.#best);
-    const options = grid.optionWish.length;
-    const loss = new Float64Array(options);
-    const net = new Float64Array(options);
+    const loss = new Float64Array(grid.optionWish.length);
     for (let wish = 0; wish < grid.wishes; wish += 1) {
       let best = 0;
       for (let at = grid.firsts[wish]!; at < grid.firsts[wish + 1]!; at += 1) {
-        net[at] = grid.optionValue[at]! - this.#costOf(at);
-        if (net[at]! > best) best = net[at]!;
+        loss[at] = grid.optionValue[at]! - this.#costOf(at);
+        best = Math.max(best, loss[at]!);
       }
       for (let at = grid.firsts[wish]!; at < grid.firsts[wish + 1]!; at += 1) {
-        loss[at] = best - net[at]!;
+        loss[at] = best - loss[at]!;
       }
     }
-    return { loss, net };
+    return { bound: this.#bestBound, loss };
   }
 }

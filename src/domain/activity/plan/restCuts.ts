@@ -1,11 +1,5 @@
 import type { PlanGrid } from './grid';
-import { optionsByStation } from './model';
-
-/** Of these options, all of one station, at most `capacity` stand in a plan. */
-export interface RestCut {
-  options: number[];
-  capacity: number;
-}
+import { atMost, optionsByStation, type PlanRow } from './model';
 
 /**
  * For every run of contacts without a pause that is too long among the chosen options: a row that forbids it and all
@@ -13,9 +7,9 @@ export interface RestCut {
  * k-th between its step and the k-th end of the window, where the next window ends no later than one slot and a pause
  * after this one begins.
  */
-export function restCuts(grid: PlanGrid, chosen: Int32Array): RestCut[] {
+export function restCuts(grid: PlanGrid, chosen: Int32Array): PlanRow[] {
   if (grid.inARow === 0) return [];
-  const cuts: RestCut[] = [];
+  const cuts: PlanRow[] = [];
   const own = optionsByStation(grid);
   for (let station = 0; station < grid.stations; station += 1) {
     const steps: number[] = [];
@@ -31,7 +25,7 @@ export function restCuts(grid: PlanGrid, chosen: Int32Array): RestCut[] {
         const step = grid.optionStep[option]!;
         return windows.some(([from, to]) => step >= from && step <= to);
       });
-      cuts.push({ options, capacity: grid.inARow });
+      cuts.push(atMost(grid.inARow, options));
     }
   }
   return cuts;
@@ -61,6 +55,5 @@ function spread(grid: PlanGrid, run: readonly number[]): [number, number][] {
     const last = before ? before[0] + grid.slot + grid.pause - 1 : Infinity;
     windows.push([step, Math.min(step + grid.slot - 1, next - 1, last)]);
   });
-  // What lies behind a window must not be further from its begin than a run allows.
   return windows;
 }

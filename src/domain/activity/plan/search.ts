@@ -1,4 +1,4 @@
-import { Board } from './board';
+import { type Board } from './board';
 import type { PlanGrid } from './grid';
 import { Numbers } from './numbers';
 

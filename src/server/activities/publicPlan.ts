@@ -3,7 +3,7 @@ import type { PlanView, PlanViewSlot, PlanViewStation } from '../../domain/activ
 import { cutLocator, locatorToPosition } from '../../domain/locator/locator';
 import type { SkedResult } from '../../domain/sked/types';
 import type { Db } from '../db/connection';
-import type { ActivityRow, SkedRow } from '../db/tables';
+import type { SkedRow } from '../db/tables';
 import { NotFound } from '../errors';
 import type { Services } from '../services';
 import { loadRevision, publishedRevisions, type StoredSlot } from './revisions';
@@ -14,22 +14,22 @@ import { loadRevision, publishedRevisions, type StoredSlot } from './revisions';
  */
 export async function publicPlan(
   services: Services,
-  activity: ActivityRow,
+  activityId: string,
   number?: number,
 ): Promise<PlanView | null> {
   const { db } = services;
-  const revisions = await publishedRevisions(db, activity.id);
-  const revision = await loadRevision(db, activity.id, number ?? 'published');
+  const revisions = await publishedRevisions(db, activityId);
+  const revision = await loadRevision(db, activityId, number ?? 'published');
   if (!revision || revision.row.published_at === null) {
     if (number === undefined) return null;
     throw new NotFound('There is no such published revision of this plan.');
   }
-  const stations = await stationsOf(db, activity.id, revision.slots);
+  const stations = await stationsOf(db, activityId, revision.slots);
   const skeds = await skedsOf(db, revision.slots);
   const reports = await reportsOf(db, [...skeds.keys()]);
   const nowMs = services.now();
   const indexOf = new Map(stations.map(({ id }, index) => [id, index]));
-  const onAir = await onAirOf(db, activity.id);
+  const onAir = await onAirOf(db, activityId);
   return {
     number: revision.row.number,
     publishedMs: revision.row.published_at,
@@ -144,4 +144,16 @@ async function onAirOf(db: Db, activityId: string) {
     .where('activity_id', '=', activityId)
     .execute();
   return new Map(rows.map((row) => [row.band, row]));
+}
+
+/** The plan in force and the place of a station in it. Throws `NotFound`. */
+export async function stationInPlan(
+  services: Services,
+  activityId: string,
+  callSign: string,
+): Promise<{ plan: PlanView; index: number }> {
+  const plan = await publicPlan(services, activityId);
+  const index = plan?.stations.findIndex((one) => one.callSign === callSign.toUpperCase()) ?? -1;
+  if (!plan || index < 0) throw new NotFound('There is no such station in a published plan.');
+  return { plan, index };
 }

@@ -41,7 +41,7 @@ export async function publishRevision(
   const seen = await loadRevision(services.db, activity.id, 'draft');
   if (!seen) throw new Conflict('There is no draft to publish. Compute a plan first.');
   // Recomputes every slot from the sky, outside the transaction: nothing in it may take long.
-  const faults = await planFaults(services, activity.id, seen.slots);
+  const faults = await planFaults(services, activity, seen.slots);
   if (faults.length > 0) {
     throw new Conflict(
       `The plan cannot be published as it stands. ${faults.slice(0, 3).join(' ')}`,

@@ -4,6 +4,7 @@ import { publishRevision, publishSchema } from '../server/activities/publishRevi
 import { z } from 'zod';
 import { activitySettingsSchema, nestedFields } from '../domain/activity/settings';
 import { openToAll, requirePerson, requireRole } from '../server/auth/guards';
+import { askForPlan, askForPlanSchema } from '../server/activities/askForPlan';
 import { createActivity } from '../server/activities/createActivity';
 import { inviteGuest, guestInvitationSchema } from '../server/activities/inviteGuest';
 import { inviteStation } from '../server/activities/inviteStation';
@@ -13,6 +14,7 @@ import { remindRoster } from '../server/activities/remindRoster';
 import { removeFromRoster } from '../server/activities/removeFromRoster';
 import { saveAnswer } from '../server/activities/saveAnswer';
 import { saveAnswerByLink } from '../server/activities/saveAnswerByLink';
+import { stopPlan } from '../server/activities/stopPlan';
 import { updateActivity } from '../server/activities/updateActivity';
 import { clientKey } from '../server/http/clientAddress';
 import { limitRate } from '../server/http/rateLimit';
@@ -97,6 +99,21 @@ export const activities = {
     const viewer = requireRole(context, 'coordinator');
     const { reminded } = await remindRoster(services(), viewer, slug);
     return rosterDone(slug, 'reminded', String(reminded));
+  }),
+
+  askForPlan: formAction(
+    askForPlanSchema.extend({ slug: z.string() }),
+    async ({ slug, how }, context) => {
+      const viewer = requireRole(context, 'coordinator');
+      await askForPlan(services(), viewer, slug, { how });
+      return { goTo: paths.activityPlan(slug) };
+    },
+  ),
+
+  stopPlan: formAction(z.object({ slug: z.string() }), async ({ slug }, context) => {
+    const viewer = requireRole(context, 'coordinator');
+    await stopPlan(services(), viewer, slug);
+    return { goTo: paths.activityPlan(slug) };
   }),
 
   answer: formAction(formFields, async ({ slug = '', stationId = '', ...fields }, context) => {

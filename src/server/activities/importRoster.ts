@@ -47,7 +47,7 @@ export async function importRoster(
   viewer: Pick<Viewer, 'id' | 'role'>,
   slug: string,
   text: string,
-): Promise<{ imported: number }> {
+): Promise<{ imported: number; asked: number }> {
   return inTransaction(services.db, async (tx) => {
     const activity = await requireEditor(tx, viewer, slug);
     const { lines, problems } = await preview(tx, activity, text);
@@ -62,7 +62,7 @@ export async function importRoster(
       else await answerFor(tx, services, activity, viewer, stationId, line, offered);
     }
     await mailRoster(tx, services, activity, 'invitation', written);
-    return { imported: lines.length };
+    return { imported: lines.length, asked: written.length };
   });
 }
 

@@ -99,9 +99,9 @@ class Solver {
       this.#lower(this.#value, 'bound');
       return;
     }
-    this.#anneal(2000, 200, 100_000 + 20 * options);
+    this.#anneal(2000, 200, moves(options, 100_000) + 20 * options);
     this.#price(small ? 200 : 1500);
-    this.#anneal(3000, 100, 200_000 + 100 * options);
+    this.#anneal(3000, 100, moves(options, 200_000) + 100 * options);
     if (this.#over()) return;
     if (!small) {
       for (let round = 0; round < 3 && !this.#over(); round += 1) {
@@ -112,7 +112,8 @@ class Solver {
     for (let round = 0; round < 4 && !this.#over(); round += 1) {
       this.#reduce();
       const before = this.#value;
-      this.#anneal(1000, 20, 100_000 + 50 * this.#inQuestion.options.length);
+      const left = this.#inQuestion.options.length;
+      this.#anneal(1000, 20, moves(left, 100_000) + 50 * left);
       if (this.#value === before && round > 0) break;
     }
     this.#branch();
@@ -280,6 +281,11 @@ class Solver {
   #leftS(): number {
     return this.control.timeLimitS - this.#elapsedMs() / 1000;
   }
+}
+
+/** So many, but fewer for a handful of options. */
+function moves(options: number, most: number): number {
+  return Math.min(most, 500 * options);
 }
 
 /** Options of the wishes from the values of the columns; null where a wish would have two. */

@@ -217,6 +217,25 @@ describe('mails of the roster', () => {
     expect(member!.activity_id).not.toBeNull();
   });
 
+  it('say where they are switched off, and go to nobody who did', async () => {
+    const { services, people } = world;
+    await invite('QA1LUN');
+    const [mail] = await world.mails();
+    expect(mail!.unsubscribe_url).toMatch(/\/unsubscribe\//);
+    expect(mail!.text_body).toContain(mail!.unsubscribe_url!);
+    expect(mail!.reply_to).toBe(world.marit.email);
+    await services.db
+      .insertInto('mail_preference')
+      .values({
+        person_id: people['QB7TID']!.id,
+        preference_json: JSON.stringify({ topics: { activity: false } }),
+        updated_at: 0,
+      })
+      .execute();
+    await invite('QB7TID');
+    expect(await world.mails()).toHaveLength(1);
+  });
+
   it('remind who has not answered, by hand once a day', async () => {
     await invite('QA1LUN');
     await invite('QB7TID');

@@ -14,7 +14,11 @@ export function planOf(grid: PlanGrid, chosen: Int32Array, boundUnits: number | 
   const slots = [...chosen]
     .filter((option) => option >= 0)
     .sort((one, other) => grid.optionStep[one]! - grid.optionStep[other]! || one - other)
-    .map((option) => slotOf(grid, option));
+    .map((option) => {
+      const { priority } = grid.problem.wishes[grid.optionWish[option]!]!;
+      const chance = Math.round((100 * grid.optionWorth[option]!) / (UNITS * priority)) / 100;
+      return { ...slotOf(grid, option), chance };
+    });
   const gap = boundUnits === null ? null : gapOf(board.value, boundUnits);
   return {
     slots,

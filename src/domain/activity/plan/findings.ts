@@ -32,7 +32,7 @@ export interface PlanCheck {
   worth: number;
 }
 
-/** What keeps a wish out of the plan. */
+/** What keeps a wish out of the plan; `free`: nothing but that nobody put it in. */
 export type LeftOutReason =
   | 'never'
   | 'noBand'
@@ -44,7 +44,7 @@ export type LeftOutReason =
   | 'bandChange'
   | 'rest'
   | 'tooMany'
-  | 'worthLess';
+  | 'free';
 
 export interface LeftOut {
   wishId: string;

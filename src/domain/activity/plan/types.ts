@@ -69,9 +69,14 @@ export interface PlanSlot {
   startMs: number;
 }
 
+export interface PlannedSlot extends PlanSlot {
+  /** Of completing the contact, as its option says; 0 for a fixed slot outside of every option. */
+  chance: number;
+}
+
 /** An answer. Slots are in order of time, then of their wishes. */
 export interface Plan {
-  slots: PlanSlot[];
+  slots: PlannedSlot[];
   /** Sum of priority × chance. */
   worth: number;
   /** Worth and the rest of what was maximised (`PlanWeights`). */

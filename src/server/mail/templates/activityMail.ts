@@ -7,26 +7,23 @@ import {
   formatUtcRange,
 } from '../../../domain/time/format';
 import type { ActivityView } from '../../../domain/activity/views';
-import { renderMail } from '../shell';
-import type { OutgoingMail } from '../outbox';
+import type { MailContent } from '../shell';
 
 export type ActivityMailKind = 'invitation' | 'reminder' | 'freshLink';
 
 interface ActivityMail {
   kind: ActivityMailKind;
   activity: ActivityView;
-  to: { email: string; name: string; timeZone: string; personId: string };
+  to: { timeZone: string };
   /** Call signs for which they answer. */
   callSigns: string[];
   /** Page on which they answer. */
   url: string;
   guest: boolean;
-  /** Address of the coordinator, to whom answers by mail go. */
-  replyTo?: string | undefined;
 }
 
 /** Invitation to an activity, the reminder to answer it, and a fresh link to the answer. */
-export function activityMail(mail: ActivityMail): OutgoingMail {
+export function activityMail(mail: ActivityMail): { subject: string; content: MailContent } {
   const { activity, to, callSigns, url, guest, kind } = mail;
   const stations = listed(callSigns);
   const { title, lead } = opening(kind, activity, stations);
@@ -47,7 +44,7 @@ export function activityMail(mail: ActivityMail): OutgoingMail {
       to.timeZone === 'UTC' ? '' : `, ${formatLocal(activity.answersByMs, to.timeZone)}`;
     facts.push(['Answer by', `${formatUtc(activity.answersByMs, { withYear: true })}${local}`]);
   }
-  const rendered = renderMail({
+  const content: MailContent = {
     title,
     paragraphs: [
       lead,
@@ -61,16 +58,8 @@ export function activityMail(mail: ActivityMail): OutgoingMail {
     footer: guest
       ? `You get this mail because ${activity.coordinatorName} entered your address for ${stations}. The link is yours alone: pass it to nobody. If you do not know them, leave it: nothing happens.`
       : `You get this mail because you are in the crew of ${stations}.`,
-  });
-  return {
-    to: to.email,
-    subject: title,
-    ...rendered,
-    topic: 'activity',
-    personId: to.personId,
-    activityId: activity.id,
-    ...(mail.replyTo ? { replyTo: mail.replyTo } : {}),
   };
+  return { subject: title, content };
 }
 
 function opening(

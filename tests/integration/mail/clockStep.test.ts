@@ -52,14 +52,17 @@ describe('the clock of the worker', () => {
   it.each([
     ['back', -HOUR_MS],
     ['forth', HOUR_MS],
-  ])('goes an hour %s: the mail of a dead worker waits no longer than its lease', async (_, step) => {
-    const id = await post(ground);
-    await leaveLeased(id);
-    ground.passMs(step);
-    runWorker();
-    expect(await secondsUntilSent(id, 8)).toBeLessThan(2 + 3);
-    expect(fake!.received).toHaveLength(1);
-  });
+  ])(
+    'goes an hour %s: the mail of a dead worker waits no longer than its lease',
+    async (_, step) => {
+      const id = await post(ground);
+      await leaveLeased(id);
+      ground.passMs(step);
+      runWorker();
+      expect(await secondsUntilSent(id, 8)).toBeLessThan(2 + 3);
+      expect(fake!.received).toHaveLength(1);
+    },
+  );
 
   it('goes back and forth again while mails come: each is sent once, none waits', async () => {
     const setClock = runWorker();

@@ -3,6 +3,7 @@ import { drag60days } from './drag';
 import { growth } from './growth';
 import { linkPair30d } from './link';
 import { mailFaults200 } from './mailFaults';
+import { race10000 } from './race';
 import { mergeResults, printResults, type Bench } from './results';
 import { windowsPair30d } from './windowsPair30d';
 
@@ -13,6 +14,7 @@ const BENCHES: readonly Bench[] = [
   linkPair30d,
   drag60days,
   mailFaults200,
+  race10000,
 ];
 
 const filter = process.argv[2] ?? '';

@@ -8,6 +8,7 @@ async function run(): Promise<BenchResult[]> {
   const { mails, sent, setAside, lost, strange, duplicates, unexplained } = report;
   console.table(report.conversations);
   for (const words of [...lost, ...strange]) console.log(words);
+  for (const acceptance of unexplained) console.log(acceptance);
   console.log(
     `${report.seconds.toFixed(0)} s, integrity of the database: ${report.integrity}, ` +
       `copies that need not have been sent: ${unexplained.length}, ` +

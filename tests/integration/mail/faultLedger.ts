@@ -53,7 +53,7 @@ export class FaultLedger {
 
   /** Why the worker could not know that its mail was taken before it began anew. */
   #explains({ beganMs, takenMs, told, cut }: Acceptance, againMs: number, attemptMs: number) {
-    const killed = this.killedMs.some((at) => at >= takenMs - 50 && at <= againMs + 50);
+    const killed = this.killedMs.some((at) => at >= beganMs && at <= againMs);
     return !told || cut || killed || takenMs - beganMs > attemptMs * 0.8;
   }
 }

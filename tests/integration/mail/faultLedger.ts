@@ -3,10 +3,8 @@ import type { OutboxRow } from '~/server/db/tables';
 /** One time that the server took responsibility for a message. */
 export interface Acceptance {
   beganMs: number;
-  takenMs: number;
-  /** Whether its 250 left before the line was cut, if it was. */
-  told: boolean;
-  cut: boolean;
+  /** Whether the worker heard the 250: it said QUIT afterwards. */
+  heard: boolean;
 }
 
 /** What was put in, what came out, and what that says. */
@@ -22,12 +20,12 @@ export class FaultLedger {
     const messageId = /^Message-ID: (\S+?)\r?$/m.exec(source)?.[1] ?? '(none)';
     const subject = /^Subject: (.+?)\r?$/m.exec(source)?.[1] ?? '';
     if (this.undone.has(subject)) this.undoneSeen.push(subject);
-    const acceptance = { beganMs, takenMs: Date.now(), told: false, cut: false };
+    const acceptance = { beganMs, heard: false };
     this.acceptances.set(messageId, [...(this.acceptances.get(messageId) ?? []), acceptance]);
     return acceptance;
   }
 
-  judge(rows: readonly OutboxRow[], attemptMs: number): FaultFindings {
+  judge(rows: readonly OutboxRow[]): FaultFindings {
     const known = new Set(rows.map((row) => row.message_id));
     const copies = [...this.acceptances.values()];
     return {
@@ -39,7 +37,7 @@ export class FaultLedger {
       duplicates: copies.reduce((sum, times) => sum + times.length - 1, 0),
       unexplained: copies.flatMap((times) =>
         times.slice(0, -1).filter((time, index) => {
-          return !this.#explains(time, times[index + 1]!.beganMs, attemptMs);
+          return !this.#explains(time, times[index + 1]!.beganMs);
         }),
       ),
     };
@@ -52,9 +50,9 @@ export class FaultLedger {
   }
 
   /** Why the worker could not know that its mail was taken before it began anew. */
-  #explains({ beganMs, takenMs, told, cut }: Acceptance, againMs: number, attemptMs: number) {
+  #explains({ beganMs, heard }: Acceptance, againMs: number): boolean {
     const killed = this.killedMs.some((at) => at >= beganMs && at <= againMs);
-    return !told || cut || killed || takenMs - beganMs > attemptMs * 0.8;
+    return !heard || killed;
   }
 }
 

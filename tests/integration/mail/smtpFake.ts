@@ -15,6 +15,8 @@ export type Script = Partial<Record<Stage, Move>> & {
   at?: (stage: Stage, asked: string) => void;
   /** Runs after each answer was written. */
   answered?: (stage: Stage) => void;
+  /** Runs when the client says that it is done, which it does after it heard the last answer. */
+  quit?: () => void;
   /** The line is cut after the answer at this stage was sent. */
   cutAfter?: Stage;
 };
@@ -109,8 +111,10 @@ function converse(socket: net.Socket, script: Script, received: string[]): void 
       }
       const stage = VERBS[unit.slice(0, 4).toUpperCase()];
       if (stage) inMessage = answer(stage, unit).startsWith('354');
-      else if (/^QUIT/i.test(unit)) socket.end('221 2.0.0 bye\r\n');
-      else socket.write('250 ok\r\n');
+      else if (/^QUIT/i.test(unit)) {
+        script.quit?.();
+        socket.end('221 2.0.0 bye\r\n');
+      } else socket.write('250 ok\r\n');
     }
   });
 }

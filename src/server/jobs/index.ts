@@ -1,6 +1,7 @@
 import { remindDueRosters } from '../activities/remindRoster';
 import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
+import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
 import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
@@ -27,6 +28,14 @@ export function jobsOf(services: Services): Job[] {
   }));
   return [
     ...carriers,
+    {
+      name: 'limit waits after a clock step',
+      everyMs: SECOND_MS,
+      run: async () => {
+        await limitWaits(services);
+        return false;
+      },
+    },
     {
       name: 'lapse offers whose time came',
       everyMs: 15 * SECOND_MS,

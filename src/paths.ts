@@ -36,6 +36,9 @@ export const paths = {
 
   skeds: '/skeds',
   sked: (id: string) => `/skeds/${id}`,
+  /** With the ledgers of two of its stations. */
+  skedPair: (id: string, first: string, second: string) =>
+    `/skeds/${id}?pair=${encodeURIComponent(`${first},${second}`)}#pair-heading`,
   /** Page that asks for words and a second press: decline, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,

@@ -81,7 +81,8 @@ function Cell({ cell, name, chosen, weakest, href, onOpen }: CellProps) {
   const inside = (
     <>
       <span className={`chip chip--${margin.step}`}>{qualityFigure(margin)}</span>
-      <span className="matrix__word">{weakest ? 'weakest' : margin.step}</span>
+      <span className="matrix__word">{margin.step}</span>
+      {weakest ? <span className="matrix__word matrix__weakest">weakest</span> : null}
     </>
   );
   return href === undefined ? (

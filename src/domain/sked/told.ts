@@ -18,6 +18,7 @@ const DID: Record<SkedEventKind, string> = {
   accepted: 'accepted',
   agreed: 'agreed',
   declined: 'declined',
+  droppedOut: 'dropped out',
   withdrawn: 'withdrew it',
   lapsed: 'lapsed',
   cancelled: 'cancelled it',

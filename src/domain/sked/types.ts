@@ -19,6 +19,7 @@ export const SKED_EVENT_KINDS = [
   'accepted',
   'agreed',
   'declined',
+  'droppedOut',
   'withdrawn',
   'lapsed',
   'cancelled',

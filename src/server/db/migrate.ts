@@ -1,4 +1,4 @@
-import { Migrator, type Migration } from 'kysely';
+import { Migrator, sql, type Kysely, type Migration } from 'kysely';
 import { migrations } from '../../../db/migrations';
 import type { Db } from './connection';
 
@@ -18,11 +18,18 @@ export async function migrateToLatest(
   db: Db,
   all: Record<string, Migration> = migrations,
 ): Promise<string[]> {
+  const checked = Object.fromEntries(
+    Object.entries(all).map(([name, migration]) => [name, withReferencesChecked(migration)]),
+  );
   const migrator = new Migrator({
     db,
-    provider: { getMigrations: () => Promise.resolve(all) },
+    provider: { getMigrations: () => Promise.resolve(checked) },
   });
-  const { error, results } = await migrator.migrateToLatest();
+  // A table can only be rebuilt while they are off, and the switch does nothing inside a transaction.
+  await sql`pragma foreign_keys = off`.execute(db);
+  const { error, results } = await migrator
+    .migrateToLatest()
+    .finally(() => sql`pragma foreign_keys = on`.execute(db));
   if (error) {
     const failed = results?.find((result) => result.status === 'Error')?.migrationName;
     const why = error instanceof Error ? error.message : 'unknown reason';
@@ -34,4 +41,18 @@ export async function migrateToLatest(
     );
   }
   return (results ?? []).map((result) => result.migrationName);
+}
+
+function withReferencesChecked(migration: Migration): Migration {
+  return {
+    async up(db: Kysely<unknown>): Promise<void> {
+      await migration.up(db);
+      const { rows } = await sql<{
+        table: string;
+        parent: string;
+      }>`pragma foreign_key_check`.execute(db);
+      const [broken] = rows;
+      if (broken) throw new Error(`a row of ${broken.table} points to no ${broken.parent}`);
+    },
+  };
 }

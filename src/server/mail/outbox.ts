@@ -1,4 +1,5 @@
 import { newId } from '../ids';
+import type { CalendarMethod, MailTopic } from '../db/tables';
 import type { Services } from '../services';
 import type { Tx } from '../db/transaction';
 
@@ -9,7 +10,18 @@ export interface OutgoingMail {
   text: string;
   html: string;
   /** `method` must be the METHOD inside `body`, or mail programs ignore the entry. */
-  calendar?: { method: 'REQUEST' | 'CANCEL'; body: string };
+  calendar?: { method: CalendarMethod; body: string };
+  /** Default: about the account, which cannot be switched off. */
+  topic?: MailTopic;
+  /** Whom and what it is about, so that an answer to the mail finds its way. */
+  personId?: string;
+  skedId?: string;
+  activityId?: string;
+  replyTo?: string;
+  /** Address that ends mails of this topic with one press (RFC 8058). */
+  unsubscribeUrl?: string;
+  /** The mail is a reminder; delivery drops it when what it reminds of is no longer so. */
+  reminderId?: string;
 }
 
 /**
@@ -37,6 +49,13 @@ export async function enqueueMail(
       html_body: mail.html,
       calendar_method: mail.calendar?.method ?? null,
       calendar_body: mail.calendar?.body ?? null,
+      topic: mail.topic ?? 'account',
+      person_id: mail.personId ?? null,
+      sked_id: mail.skedId ?? null,
+      activity_id: mail.activityId ?? null,
+      reply_to: mail.replyTo ?? null,
+      unsubscribe_url: mail.unsubscribeUrl ?? null,
+      reminder_id: mail.reminderId ?? null,
       created_at: now,
       next_attempt_at: now,
       leased_until: null,

@@ -42,13 +42,23 @@ export function smtpTransport({ smtp, publicUrl }: Config): SendMail {
         html: mail.html_body,
         messageId: mail.message_id,
         date: new Date(mail.created_at),
-        headers: { 'Auto-Submitted': 'auto-generated' },
+        headers: { 'Auto-Submitted': 'auto-generated', ...unsubscribeHeaders(mail) },
+        ...(mail.reply_to === null ? {} : { replyTo: mail.reply_to }),
         ...calendarPart(mail),
         signal,
       });
     } catch (error) {
       throw notTaken(error);
     }
+  };
+}
+
+/** One-press unsubscribing (RFC 8058): the mail program posts to the address by itself. */
+function unsubscribeHeaders({ unsubscribe_url: url }: OutboxRow): Record<string, string> {
+  if (url === null) return {};
+  return {
+    'List-Unsubscribe': `<${url}>`,
+    'List-Unsubscribe-Post': 'List-Unsubscribe=One-Click',
   };
 }
 

@@ -52,6 +52,7 @@ const VERBS: Record<SkedEventKind, string> = {
   accepted: 'accepted',
   agreed: 'Agreed:',
   declined: 'declined',
+  droppedOut: 'dropped out of',
   withdrawn: 'withdrew',
   lapsed: 'Lapsed without agreement:',
   cancelled: 'cancelled',

@@ -1,7 +1,7 @@
 import type { Tx } from '../db/transaction';
 import { Conflict } from '../errors';
 
-/** Throws `Conflict` when another station has the call sign. */
+/** Throws `Conflict` when another station has the call sign; one described only by others does not own it. */
 export async function requireFreeCallSign(
   tx: Tx,
   callSign: string,
@@ -11,6 +11,7 @@ export async function requireFreeCallSign(
     .selectFrom('station')
     .select('id')
     .where('call_sign', '=', callSign)
+    .where('guest', '=', 0)
     .executeTakeFirst();
   if (other && other.id !== exceptStationId) {
     throw new CallSignTaken(callSign);

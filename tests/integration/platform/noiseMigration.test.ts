@@ -46,7 +46,8 @@ describe('0002_noise_records', () => {
   it('adds its table to a database in use and keeps every row', async () => {
     const before = await everything();
     expect(before.map((rows) => (rows as unknown[]).length)).toEqual([1, 1, 1, 1]);
-    expect((await migrateToLatest(db))[0]).toBe('0002_noise_records');
+    const upToIt = { ...GROUND, '0002_noise_records': migrations['0002_noise_records']! };
+    expect(await migrateToLatest(db, upToIt)).toEqual(['0002_noise_records']);
     expect(await everything()).toEqual(before);
     expect(await db.selectFrom('noise_record').selectAll().execute()).toEqual([]);
   });

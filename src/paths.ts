@@ -39,6 +39,20 @@ export const paths = {
   /** Page that asks for words and a second press: decline, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  /** Everything for the hour itself, to print or to keep offline. */
+  skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedLive: (id: string) => `/skeds/${id}/live`,
+  /** The Moon's track as CSV; without a station the viewer's own. */
+  skedTrack: (id: string, stationId?: string, stepS?: number) => {
+    const query = new URLSearchParams({
+      ...(stationId ? { station: stationId } : {}),
+      ...(stepS ? { step: String(stepS) } : {}),
+    }).toString();
+    return `/skeds/${id}/track.csv${query ? `?${query}` : ''}`;
+  },
+  /** The script that keeps sheets, and what it watches over. */
+  sheetKeeper: '/skeds/keeper.js',
+  sheetKeeperScope: '/skeds/',
   calendar: '/calendar',
 
   stations: '/stations',
@@ -90,6 +104,7 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedSheet: (id: string) => `/api/v1/skeds/${id}/sheet`,
     calendar: '/api/v1/calendar',
   },
 } as const;

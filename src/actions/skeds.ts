@@ -7,6 +7,7 @@ import { declineSked } from '../server/skeds/declineSked';
 import { moveSked } from '../server/skeds/moveSked';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
+import { setSheet, sheetSettingsFormSchema } from '../server/skeds/setSheet';
 import { withdrawSked } from '../server/skeds/withdrawSked';
 import { paths } from '../paths';
 import { formAction } from './form';
@@ -54,5 +55,11 @@ export const skeds = {
     const viewer = requirePerson(context);
     await reportSked(services(), viewer, id, said);
     return done(id, 'reported');
+  }),
+
+  setSheet: formAction(sheetSettingsFormSchema, async ({ id, first, convention }, context) => {
+    const viewer = requirePerson(context);
+    await setSheet(services(), viewer, id, { eastFirst: first === 'east', convention });
+    return { goTo: `${paths.skedSheet(id)}?done=set` };
   }),
 };

@@ -106,5 +106,6 @@ export const paths = {
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
     skedSheet: (id: string) => `/api/v1/skeds/${id}/sheet`,
     calendar: '/api/v1/calendar',
+    clock: '/api/v1/clock',
   },
 } as const;

@@ -51,7 +51,10 @@ async function takeOver() {
 async function sheet(request, url) {
   const kept = await caches.open(SHEETS).then((cache) => cache.match(url.pathname));
   try {
-    const answer = await fetch(request, kept ? { signal: AbortSignal.timeout(LONGEST_WAIT_MS) } : {});
+    const answer = await fetch(
+      request,
+      kept ? { signal: AbortSignal.timeout(LONGEST_WAIT_MS) } : {},
+    );
     if (kept && AWAY.includes(answer.status)) return await asSavedCopy(kept);
     await learn(answer.clone(), url);
     return answer;

@@ -69,7 +69,5 @@ function linked(): string[] {
     ...document.querySelectorAll<HTMLLinkElement>('link[rel~="stylesheet"], link[rel~="preload"]'),
   ]
     .map(({ href }) => href)
-    .concat(
-      [...document.querySelectorAll<HTMLScriptElement>('script[src]')].map(({ src }) => src),
-    );
+    .concat([...document.querySelectorAll<HTMLScriptElement>('script[src]')].map(({ src }) => src));
 }

@@ -40,9 +40,7 @@ export function calibrationSteps(
   const airDb = atmosphereLossDb(atmosphere, SIN_COLD_SKY_ELEVATION);
   const skyK = coldestOnPathK(terminal.beam) + atmosphereNoiseK(atmosphere, airDb);
   const coldSystemK = terminal.measured ? terminal.receiverK : terminal.steadyK + skyK;
-  const receiverK = terminal.measured
-    ? Math.max(terminal.receiverK - skyK, 0)
-    : terminal.receiverK;
+  const receiverK = terminal.measured ? Math.max(terminal.receiverK - skyK, 0) : terminal.receiverK;
   const moonK = moonNoiseK(
     moonBrightness(frequencyMhz).meanK,
     moonDiameterDeg(moonRangeKm),

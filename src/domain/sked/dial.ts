@@ -19,7 +19,7 @@ export function conventionWords(
         label: 'Constant at the Moon',
         sentence:
           'Each station takes half of its own echo’s Doppler off when it transmits, so that all arrive at the Moon on the agreed frequency, and adds it when it listens.',
-        alike: 'Both sides must do alike, or you miss each other by the difference.',
+        alike: 'All sides must do alike, or you miss each other by the difference.',
       };
     case 'none':
       return {
@@ -50,7 +50,7 @@ export function conventionWords(
         label: 'Own echo on the frequency',
         sentence:
           'Each station transmits so that its own echo comes back on the agreed frequency, and listens beside it for the partner.',
-        alike: 'Both sides must do alike, or you miss each other by the difference.',
+        alike: 'All sides must do alike, or you miss each other by the difference.',
       };
   }
 }

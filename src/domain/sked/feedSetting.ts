@@ -71,7 +71,10 @@ function circularSentences(
   if (!isCircular(partner)) return [set, `${callSign} is linear: 3 dB less, at any angle.`];
   return own === partner
     ? [set, `${callSign} does the same. Nothing to turn.`]
-    : [set, `${callSign} is set to ${CIRCULAR_NAMES[partner]}: crossed, about 22 dB less. One of you changes the sense.`];
+    : [
+        set,
+        `${callSign} is set to ${CIRCULAR_NAMES[partner]}: crossed, about 22 dB less. One of you changes the sense.`,
+      ];
 }
 
 function linearSentences(

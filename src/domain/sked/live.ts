@@ -41,7 +41,11 @@ const AFTER_MS = 20 * MINUTE_MS;
 const MOST_STEPS = 400;
 
 /** The track a minute apart, wider in slots beyond five hours. */
-export function liveTrackTimes(slot: Interval): { startMs: number; stepMs: number; times: number[] } {
+export function liveTrackTimes(slot: Interval): {
+  startMs: number;
+  stepMs: number;
+  times: number[];
+} {
   const startMs = slot.startMs - BEFORE_MS;
   const endMs = slot.endMs + AFTER_MS;
   const stepMs = Math.ceil((endMs - startMs) / MINUTE_MS / MOST_STEPS) * MINUTE_MS;
@@ -151,7 +155,11 @@ interface Step {
   share: number;
 }
 
-function stepAt(track: { startMs: number; stepMs: number }, timeMs: number, count: number): Step | null {
+function stepAt(
+  track: { startMs: number; stepMs: number },
+  timeMs: number,
+  count: number,
+): Step | null {
   const position = (timeMs - track.startMs) / track.stepMs;
   const index = Math.min(Math.floor(position), count - 2);
   return position >= 0 && position <= count - 1 ? { index, share: position - index } : null;

@@ -57,7 +57,7 @@ export function periodAt(plan: TrPlan, timeMs: number): TrPeriod {
 /** The periods from one instant to another, the first and the last cut there. */
 export function periodsIn(plan: TrPlan, span: Interval = plan): TrPeriod[] {
   const periods: TrPeriod[] = [];
-  for (let atMs = span.startMs; atMs < span.endMs; ) {
+  for (let atMs = span.startMs; atMs < span.endMs;) {
     const period = periodAt(plan, atMs);
     periods.push({
       turn: period.turn,
@@ -78,7 +78,10 @@ export function sameEachHour({ periodMs, order }: TrPlan): boolean {
 const LISTED_IN_FULL_MS = 3 * HOUR_MS;
 
 /** What of a plan is listed: all of it, of a long slot one hour (every hour alike) or its first three. */
-export function listedPeriods(plan: TrPlan): { periods: TrPeriod[]; rest: 'none' | 'alike' | 'goesOn' } {
+export function listedPeriods(plan: TrPlan): {
+  periods: TrPeriod[];
+  rest: 'none' | 'alike' | 'goesOn';
+} {
   if (plan.endMs - plan.startMs <= LISTED_IN_FULL_MS) {
     return { periods: periodsIn(plan), rest: 'none' };
   }

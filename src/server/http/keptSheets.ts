@@ -14,7 +14,11 @@ function markOf(viewer: Pick<Viewer, 'id'>): string {
 
 /** Marks the page as one that the browser may keep for this person. */
 export function mayBeKept(
-  { cookies, url, response }: Pick<APIContext, 'cookies' | 'url'> & { response: { headers: Headers } },
+  {
+    cookies,
+    url,
+    response,
+  }: Pick<APIContext, 'cookies' | 'url'> & { response: { headers: Headers } },
   viewer: Viewer,
 ): void {
   response.headers.set(HEADER, markOf(viewer));

@@ -83,14 +83,20 @@ export function checksBefore(
 
 /** What to do when nothing is heard, in the order of what costs least and helps most. */
 export function nothingHeard(
-  pair: PairSheet,
+  pairs: readonly PairSheet[],
   steps: CalibrationSteps | null,
   frequencyMhz: number,
   circular: boolean,
 ): Advice[] {
-  const { middle, partner } = pair;
-  const moonDb = steps?.moonDb ?? 0;
+  const several = pairs.length > 1;
+  const partners = listOf(pairs.map(({ partner }) => partner));
+  const { middle } = pairs[0]!;
   const hertz = (value: number) => formatDoppler(value, frequencyMhz);
+  const each = (figure: (pair: PairSheet) => string) =>
+    pairs.map((pair) => `${figure(pair)}${several ? ` (${pair.partner})` : ''}`).join(', ');
+  const dials = each((pair) => `${formatDial(frequencyMhz, pair.middle.ownDial.receiveHz)} kHz`);
+  const dopplers = each((pair) => hertz(pair.middle.mutualHz));
+  const moonDb = steps?.moonDb ?? 0;
   return [
     {
       lead: 'Pointing.',
@@ -106,7 +112,7 @@ export function nothingHeard(
     },
     {
       lead: 'Dial and sign.',
-      text: `You listen on ${formatDial(frequencyMhz, middle.ownDial.receiveHz)} kHz. Tune on both sides as far as the mutual Doppler, ${hertz(middle.mutualHz)}, and by twice that: a partner with the wrong sign or another convention is there.`,
+      text: `You listen on ${dials}. Tune on both sides as far as the mutual Doppler, ${dopplers}, and by twice that: a partner with the wrong sign or another convention is there.`,
     },
     circular
       ? {
@@ -119,7 +125,7 @@ export function nothingHeard(
         },
     {
       lead: 'Periods.',
-      text: `Listen through one of your own periods: ${partner} may have begun with the other one.`,
+      text: `Listen through one of your own periods: ${several ? 'one of them' : partners} may have begun with the other one.`,
     },
     {
       lead: 'Time.',
@@ -129,7 +135,7 @@ export function nothingHeard(
       lead: 'Level.',
       text: 'Preamplifier on, noise up when it is switched on, no overload, filter open, right port.',
     },
-    { lead: 'Then ask.', text: `Write to ${partner}, on the page of the sked or as you agreed.` },
+    { lead: 'Then ask.', text: `Write to ${partners}, on the page of the sked or as you agreed.` },
   ];
 }
 

@@ -6,6 +6,7 @@ import type { Viewer } from '../auth/viewer';
 import type { Services } from '../services';
 import { getSked } from './getSked';
 import type { PartyStation } from './load';
+import { noSuchSked } from './refusals';
 
 /** A party with its place and equipment, as the sheet and the live view compute with it. */
 export type SheetParty = PartyStation & SheetStation & { setup: BandSetup | null };
@@ -39,11 +40,14 @@ export async function sheetOf(
   const ordered = places.flatMap(
     ({ station_id }) => parties.find(({ id }) => id === station_id) ?? [],
   );
-  const ownId = view.parties.find(({ mine }) => mine)!.stationId;
+  const ownId = view.parties.find(({ mine }) => mine)?.stationId;
+  const own = ordered.find(({ id }) => id === ownId);
+  // Who has dropped out may read the sked's page, but has no hour to come.
+  if (!own) throw noSuchSked();
   return {
     view,
     stations: ordered,
-    own: ordered.find(({ id }) => id === ownId)!,
+    own,
     sked: {
       startMs: view.startMs,
       endMs: view.endMs,

@@ -26,11 +26,11 @@ describe('how far to turn a feed', () => {
     const towards = plus(
       plus(
         scaled([observer.east[0], observer.east[1], 0], out[0]!),
-        scaled(observer.north as Vector, out[1]!),
+        scaled(observer.north, out[1]!),
       ),
-      scaled(observer.up as Vector, out[2]!),
+      scaled(observer.up, out[2]!),
     );
-    const rightRaw = cross(towards, observer.up as Vector);
+    const rightRaw = cross(towards, observer.up);
     const right = scaled(rightRaw, 1 / Math.hypot(...rightRaw));
     const above = cross(right, towards);
     const angle = (clockwiseDeg * Math.PI) / 180;

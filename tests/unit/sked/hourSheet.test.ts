@@ -118,7 +118,7 @@ describe('what the sheet says', () => {
   });
 
   it('when nothing is heard: pointing first, writing last', () => {
-    const advice = nothingHeard(pairs[0]!, null, 1296, true);
+    const advice = nothingHeard(pairs, null, 1296, true);
     expect(advice[0]!.lead).toBe('Pointing.');
     expect(advice.at(-1)!.text).toContain('QB7TID');
   });

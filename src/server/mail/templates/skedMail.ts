@@ -50,6 +50,9 @@ export function skedMail(
         ),
         ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
         ...(words && by ? [[`${by.personName} writes`, words] as [string, string]] : []),
+        ...(news.kind === 'agreed'
+          ? [['For the hour itself', facts.sheetUrl] as [string, string]]
+          : []),
       ],
       button: { label: button, url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(yourCallSigns)}.`,

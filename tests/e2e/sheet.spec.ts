@@ -113,6 +113,18 @@ test('a kept sheet is not shown to the next person at the same browser', async (
   await page.context().close();
 });
 
+test('a sheet fits on one or two pages of either paper', async ({ demo, browser }) => {
+  const { page, sked } = await agreedSked(browser, demo);
+  await page.goto(demo.url + paths.skedSheet(sked.id));
+  for (const format of ['A4', 'Letter']) {
+    const pdf = (await page.pdf({ format })).toString('latin1');
+    const pages = pdf.match(/\/Type\s*\/Page\b(?!s)/g)?.length ?? 0;
+    expect(pages, format).toBeGreaterThanOrEqual(1);
+    expect(pages, format).toBeLessThanOrEqual(2);
+  }
+  await page.context().close();
+});
+
 test('what all parties see alike is set without JavaScript', async ({ demo, browser }) => {
   const { page: finder, sked } = await agreedSked(browser, demo);
   await finder.context().close();

@@ -7,8 +7,8 @@ interface Props {
   own: string;
   periodMs: number;
   nowMs: number;
-  /** Where the sked is reported. */
-  reportHref: string;
+  /** Where the sked is reported; null where it was never agreed. */
+  reportHref: string | null;
 }
 
 /** Whose turn it is, how long still, and what comes then. */
@@ -20,9 +20,11 @@ export function LiveTurn({ state, own, periodMs, nowMs, reportHref }: Props) {
         <p className="live__who">The sked is over</p>
         <p className="text-action">
           Power off, dish parked, receiver on.{' '}
-          <a href={reportHref}>
-            <strong>How did it go?</strong>
-          </a>
+          {reportHref === null ? null : (
+            <a href={reportHref}>
+              <strong>How did it go?</strong>
+            </a>
+          )}
         </p>
       </section>
     );

@@ -26,7 +26,8 @@ interface Props {
   /** Highest of the limits below which the station does not transmit; null where there is none. */
   lowestDeg: number | null;
   backHref: string;
-  reportHref: string;
+  /** Null where there will be nothing to report. */
+  reportHref: string | null;
   /** What the server's clock said when the page was made; the view goes by the device's from then on. */
   nowMs: number;
 }

@@ -222,7 +222,7 @@ test('the live view counts down, changes hands, keeps the ticks and ends', async
   await expect(turn).toHaveText('The sked is over');
   await expect(page.getByRole('link', { name: 'How did it go?' })).toHaveAttribute(
     'href',
-    `${paths.sked(sked.id)}#report-heading`,
+    paths.skedReport(sked.id),
   );
   await page.context().close();
 });

@@ -1,4 +1,8 @@
+import { remindDueRosters } from '../activities/remindRoster';
+import { workPlanRuns } from '../activities/workPlanRuns';
+import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
+import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
 import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
@@ -26,10 +30,40 @@ export function jobsOf(services: Services): Job[] {
   return [
     ...carriers,
     {
+      name: 'limit waits after a clock step',
+      everyMs: SECOND_MS,
+      run: async () => {
+        await limitWaits(services);
+        return false;
+      },
+    },
+    {
       name: 'lapse offers whose time came',
       everyMs: 15 * SECOND_MS,
       run: async () => {
         await lapseDueSkeds(services);
+        return false;
+      },
+    },
+    ...(services.config.inbound.folder === null
+      ? []
+      : [
+          {
+            name: 'read mails that came in',
+            everyMs: 5 * SECOND_MS,
+            run: async () => (await readInboundFolder(services)) > 0,
+          },
+        ]),
+    {
+      name: 'compute plans',
+      everyMs: SECOND_MS,
+      run: () => workPlanRuns(services),
+    },
+    {
+      name: 'remind rosters before answers are due',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await remindDueRosters(services);
         return false;
       },
     },

@@ -3,6 +3,7 @@ import { BAND_IDS } from '../../domain/station/bands';
 import { MODE_IDS } from '../../domain/station/modes';
 import { clockOfDay } from '../../domain/sked/moveChoice';
 import { MINUTE_MS } from '../../domain/time/interval';
+import type { Tx } from '../db/transaction';
 
 /** What people may add to an offer or an answer. */
 export const wordsSchema = z
@@ -29,7 +30,12 @@ export const skedAnswerSchema = z.object({
   as: stationIdSchema.optional(),
   words: wordsSchema,
 });
-export type SkedAnswer = z.output<typeof skedAnswerSchema>;
+export type SkedAnswer = z.output<typeof skedAnswerSchema> & WithLink;
+
+/** What comes first in the transaction of a change made behind a link: using the link up. */
+export interface WithLink {
+  first?: ((tx: Tx) => Promise<void>) | undefined;
+}
 
 export const skedMoveSchema = skedAnswerSchema.extend({ start: instant, end: instant });
 

@@ -49,7 +49,20 @@ export const paths = {
   /** Page that asks for words and a second press: decline, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  /** Everything for the hour itself, to print or to keep offline. */
   skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedLive: (id: string) => `/skeds/${id}/live`,
+  /** The Moon's track as CSV; without a station the viewer's own. */
+  skedTrack: (id: string, stationId?: string, stepS?: number) => {
+    const query = new URLSearchParams({
+      ...(stationId ? { station: stationId } : {}),
+      ...(stepS ? { step: String(stepS) } : {}),
+    }).toString();
+    return `/skeds/${id}/track.csv${query ? `?${query}` : ''}`;
+  },
+  /** The script that keeps sheets, and what it watches over. */
+  sheetKeeper: '/skeds/keeper.js',
+  sheetKeeperScope: '/skeds/',
   skedTalk: (id: string) => `/skeds/${id}#talk`,
   skedReport: (id: string) => `/skeds/${id}#report`,
   live: '/live',
@@ -134,6 +147,8 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedSheet: (id: string) => `/api/v1/skeds/${id}/sheet`,
+    clock: '/api/v1/clock',
     skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
     /** The draft of its plan, as the timetable changes it. */

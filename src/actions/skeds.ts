@@ -8,6 +8,7 @@ import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
+import { setSheet, sheetSettingsFormSchema } from '../server/skeds/setSheet';
 import { withdrawSked } from '../server/skeds/withdrawSked';
 import { paths } from '../paths';
 import { formAction } from './form';
@@ -61,5 +62,11 @@ export const skeds = {
     const viewer = requirePerson(context);
     await reportSked(services(), viewer, id, said);
     return done(id, 'reported');
+  }),
+
+  setSheet: formAction(sheetSettingsFormSchema, async ({ id, first, convention }, context) => {
+    const viewer = requirePerson(context);
+    await setSheet(services(), viewer, id, { eastFirst: first === 'east', convention });
+    return { goTo: `${paths.skedSheet(id)}?done=set` };
   }),
 };

@@ -68,6 +68,7 @@ describe('a sked on the night of a clock change', () => {
       const facts: SkedMailFacts = {
         uid: 'x@echotide.example',
         url: 'https://echotide.example/skeds/x',
+        sheetUrl: 'https://echotide.example/skeds/x/sheet',
         bandLabel: '1296 MHz',
         frequency: '1296.065 MHz',
         modeLabel: 'Q65-60C',

@@ -127,7 +127,7 @@ async function keep(
   const { input, pinned } = saved;
   const problem = saved.problem!;
   const { plan } = result;
-  const leftOut = explainLeftOut(input, problem, plan);
+  const leftOut = explainLeftOut(input, plan.slots);
   const wishes = new Map(input.wishes.map((wish) => [wish.id, wish]));
   const fixed = new Set(pinned.map(({ wishId }) => wishId));
   const slots = plan.slots.map((slot) => {

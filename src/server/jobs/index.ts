@@ -1,4 +1,5 @@
 import { remindDueRosters } from '../activities/remindRoster';
+import { workPlanRuns } from '../activities/workPlanRuns';
 import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
 import { limitWaits } from '../mail/limitWaits';
@@ -53,6 +54,11 @@ export function jobsOf(services: Services): Job[] {
             run: async () => (await readInboundFolder(services)) > 0,
           },
         ]),
+    {
+      name: 'compute plans',
+      everyMs: SECOND_MS,
+      run: () => workPlanRuns(services),
+    },
     {
       name: 'remind rosters before answers are due',
       everyMs: 60 * SECOND_MS,

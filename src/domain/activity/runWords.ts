@@ -51,12 +51,12 @@ export function progressFacts(
 ): [term: string, value: string][] {
   return [
     ['Wishes with a slot', `${progress.placed} of ${wishes}`],
-    ['Best so far', formatNumber(progress.objective, 1)],
+    ['Worth, priority × chance summed', formatNumber(progress.objective, 1)],
     [
       'No plan is over',
       progress.bound === null ? 'not known yet' : formatNumber(progress.bound, 1),
     ],
-    ['At most this is missing', gapText(progress.gap)],
+    ['Missing to that at most', gapText(progress.gap)],
     ['Time', `${formatNumber(progress.elapsedMs / 1000)} s`],
   ];
 }

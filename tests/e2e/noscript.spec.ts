@@ -89,7 +89,7 @@ test('drops out of a sked of three, and subscribes to the others, without JavaSc
     const callSign = `QN${index + 6}NOJ`;
     stations.push(await addStation(page, empty, { callSign, locator: `JO5${index}` }));
   }
-  const id = await offerSked(pages[0]!, empty, stations[0]!, stations[1]!, stations[2]!);
+  const id = await offerSked(pages[0]!, empty, stations[0]!, stations[1]!, [stations[2]!]);
   for (const page of pages.slice(1)) {
     await page.goto(`${empty.url}/skeds/${id}`);
     await page.getByRole('button', { name: /^Accept / }).click();

@@ -1,5 +1,8 @@
+import { remindDueRosters } from '../activities/remindRoster';
+import { workPlanRuns } from '../activities/workPlanRuns';
 import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
+import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
 import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
@@ -27,6 +30,14 @@ export function jobsOf(services: Services): Job[] {
   return [
     ...carriers,
     {
+      name: 'limit waits after a clock step',
+      everyMs: SECOND_MS,
+      run: async () => {
+        await limitWaits(services);
+        return false;
+      },
+    },
+    {
       name: 'lapse offers whose time came',
       everyMs: 15 * SECOND_MS,
       run: async () => {
@@ -43,6 +54,19 @@ export function jobsOf(services: Services): Job[] {
             run: async () => (await readInboundFolder(services)) > 0,
           },
         ]),
+    {
+      name: 'compute plans',
+      everyMs: SECOND_MS,
+      run: () => workPlanRuns(services),
+    },
+    {
+      name: 'remind rosters before answers are due',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await remindDueRosters(services);
+        return false;
+      },
+    },
     {
       name: 'remove old tokens',
       everyMs: HOUR_MS,

@@ -25,6 +25,9 @@ const SAFE_METHODS = ['GET', 'HEAD', 'OPTIONS'];
 /** Stateless computations; they change nothing, so anybody may call them from anywhere. */
 const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, paths.api.link];
 
+/** Exactly one step below it: the token in the address is checked by the page itself. */
+const UNSUBSCRIBE = new RegExp(`^${paths.unsubscribe('[^/]+')}$`);
+
 interface Asked {
   method: string;
   pathname: string;
@@ -38,6 +41,13 @@ interface Asked {
 export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
   if (OPEN_CALCULATORS.includes(pathname)) return true;
+  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058).
+  if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname)) return true;
+  return isFromOwnPage(headers, publicUrl);
+}
+
+/** Whether the browser says that a page of ours sent this. */
+export function isFromOwnPage(headers: Headers, publicUrl: string): boolean {
   const origin = headers.get('origin');
   if (origin !== null) return ownOrigins(publicUrl).includes(origin);
   return headers.get('sec-fetch-site') === 'same-origin';

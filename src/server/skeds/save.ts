@@ -1,4 +1,5 @@
-import type { Decision } from '../../domain/sked/machine';
+import { sql } from 'kysely';
+import type { Decision, Sked } from '../../domain/sked/machine';
 import { holdsBooking } from '../../domain/sked/machine';
 import type { Tx } from '../db/transaction';
 import { newId } from '../ids';
@@ -26,6 +27,7 @@ export async function saveDecision(
       offered_by: sked.offeredBy,
       start_at: sked.startMs,
       end_at: sked.endMs,
+      agreed_version: agreedVersionAfter(sked),
       updated_at: by.atMs,
     })
     .where('id', '=', skedId)
@@ -40,6 +42,12 @@ export async function saveDecision(
   }
   await saveHappenings(tx, skedId, decision, by);
   await saveBookings(tx, skedId, decision);
+}
+
+/** Set when the slot becomes agreed, kept while it stays so (a party may drop out), gone when it is given up. */
+function agreedVersionAfter({ state, version }: Sked) {
+  if (state === 'agreed') return sql<number>`coalesce(agreed_version, ${version})`;
+  return state === 'reported' ? sql<number>`agreed_version` : null;
 }
 
 /** The history: one row for each thing that happened. The words belong to the first. */

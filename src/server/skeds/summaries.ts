@@ -2,10 +2,11 @@ import { hasLapsed } from '../../domain/sked/machine';
 import type { SkedPartyView, SkedSummary } from '../../domain/sked/view';
 import type { Db } from '../db/connection';
 import type { SkedRow } from '../db/tables';
+import type { Tx } from '../db/transaction';
 
 /** Turns rows into what lists show, with the parties of all of them in one query. */
 export async function summariesOf(
-  db: Db,
+  db: Db | Tx,
   rows: readonly SkedRow[],
   mine: ReadonlySet<string>,
   nowMs: number,

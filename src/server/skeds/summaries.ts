@@ -1,4 +1,5 @@
 import { hasLapsed } from '../../domain/sked/machine';
+import { disagreements } from '../../domain/sked/result';
 import type { SkedPartyView, SkedSummary } from '../../domain/sked/view';
 import type { Db } from '../db/connection';
 import type { SkedRow } from '../db/tables';
@@ -28,8 +29,9 @@ export async function summariesOf(
     .execute();
   const reports = await db
     .selectFrom('sked_report')
-    .select(['sked_id', 'station_id'])
+    .select(['sked_id', 'station_id', 'result', 'report_sent', 'report_received'])
     .where('sked_id', 'in', ids)
+    .orderBy('at')
     .execute();
   const reported = new Set(reports.map((report) => `${report.sked_id} ${report.station_id}`));
   return rows.map((row) => {
@@ -43,8 +45,17 @@ export async function summariesOf(
         mine: mine.has(party.station_id),
       }))
       .sort((a, b) => Number(b.mine) - Number(a.mine));
+    const said = reports
+      .filter((report) => report.sked_id === row.id)
+      .map((report) => ({
+        callSign: own.find((party) => party.stationId === report.station_id)?.callSign ?? '',
+        result: report.result,
+        reportSent: report.report_sent,
+        reportReceived: report.report_received,
+      }));
     return {
       ...summaryOf(row, own, nowMs),
+      disagreements: disagreements(said),
       reportDue:
         (row.state === 'agreed' || row.state === 'reported') &&
         row.end_at <= nowMs &&

@@ -42,6 +42,7 @@ function sked(over: Partial<SkedView>): SkedView {
     ],
     waitsForViewer: true,
     reportDue: false,
+    disagreements: [],
     events: [],
     reports: [],
     choices: {

@@ -31,6 +31,8 @@ const UNSUBSCRIBE = new RegExp(`^${paths.unsubscribe('[^/]+')}$`);
 interface Asked {
   method: string;
   pathname: string;
+  /** What follows the path, with its question mark; there an action can be named. */
+  search: string;
   headers: Headers;
 }
 
@@ -38,11 +40,14 @@ interface Asked {
  * Whether a request may change something: it comes from a page of ours. Browsers always tell the
  * origin of a POST from a form or a script; one that does not must at least say "same-origin".
  */
-export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
+export function mayChange(
+  { method, pathname, search, headers }: Asked,
+  publicUrl: string,
+): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
   if (OPEN_CALCULATORS.includes(pathname)) return true;
-  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058).
-  if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname)) return true;
+  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query.
+  if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname) && search === '') return true;
   return isFromOwnPage(headers, publicUrl);
 }
 

@@ -33,7 +33,7 @@ export function beforeMail(
     subject: `In ${left}: sked with ${partners}, ${formatUtcRange(facts)}, ${facts.bandLabel}`,
     content: {
       title: `Sked with ${partners} in ${left}`,
-      paragraphs: [`It begins in ${left}, counted from ${formatClock(nowMs)} UTC.`, CAUTIONS_LINE],
+      paragraphs: [`It begins in ${left}, counted from ${formatClock(nowMs)} UTC.`],
       facts: [
         ...skedTimes(facts, reader.timeZone),
         ['Band', facts.bandLabel],
@@ -48,6 +48,7 @@ export function beforeMail(
             ],
           }
         : { button: { label: 'Open the sked', url: links.answer } }),
+      closing: [CAUTIONS_LINE],
       footer: why(reader),
     },
   };

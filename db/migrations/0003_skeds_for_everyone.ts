@@ -59,9 +59,11 @@ const statements = [
     start_at INTEGER NOT NULL,
     end_at INTEGER NOT NULL,
     words TEXT NOT NULL DEFAULT '',
-    at INTEGER NOT NULL
+    at INTEGER NOT NULL,
+    -- SEQUENCE of the newest calendar message after it.
+    sequence INTEGER NOT NULL DEFAULT 0
   ) STRICT`,
-  `INSERT INTO sked_event_new SELECT * FROM sked_event`,
+  `INSERT INTO sked_event_new SELECT *, 0 FROM sked_event`,
   `DROP TABLE sked_event`,
   `ALTER TABLE sked_event_new RENAME TO sked_event`,
   `CREATE INDEX sked_event_by_sked ON sked_event (sked_id, at)`,
@@ -134,13 +136,41 @@ const statements = [
     outcome TEXT NOT NULL
   ) STRICT`,
 
-  `ALTER TABLE outbox ADD COLUMN topic TEXT NOT NULL DEFAULT 'account'`,
-  `ALTER TABLE outbox ADD COLUMN person_id TEXT REFERENCES person (id) ON DELETE SET NULL`,
-  `ALTER TABLE outbox ADD COLUMN sked_id TEXT REFERENCES sked (id) ON DELETE SET NULL`,
-  `ALTER TABLE outbox ADD COLUMN reply_to TEXT`,
-  `ALTER TABLE outbox ADD COLUMN unsubscribe_url TEXT`,
-  // Looked at once more when the mail leaves: a reminder of what is no longer so is dropped.
-  `ALTER TABLE outbox ADD COLUMN reminder_id TEXT REFERENCES reminder (id) ON DELETE SET NULL`,
+  // Rebuilt, because the entries of a whole plan go out in one mail as PUBLISH (RFC 5546, 3.2.1).
+  `CREATE TABLE outbox_new (
+    id TEXT PRIMARY KEY,
+    message_id TEXT NOT NULL UNIQUE,
+    recipient TEXT NOT NULL,
+    subject TEXT NOT NULL,
+    text_body TEXT NOT NULL,
+    html_body TEXT NOT NULL,
+    calendar_method TEXT CHECK (calendar_method IN ('REQUEST', 'CANCEL', 'PUBLISH')),
+    calendar_body TEXT,
+    created_at INTEGER NOT NULL,
+    next_attempt_at INTEGER NOT NULL,
+    attempts INTEGER NOT NULL DEFAULT 0,
+    leased_until INTEGER,
+    sent_at INTEGER,
+    set_aside_at INTEGER,
+    last_error TEXT,
+    topic TEXT NOT NULL DEFAULT 'account',
+    person_id TEXT REFERENCES person (id) ON DELETE SET NULL,
+    sked_id TEXT REFERENCES sked (id) ON DELETE SET NULL,
+    reply_to TEXT,
+    unsubscribe_url TEXT,
+    -- Looked at once more when the mail leaves: a reminder of what is no longer so is dropped.
+    reminder_id TEXT REFERENCES reminder (id) ON DELETE SET NULL,
+    CHECK ((calendar_method IS NULL) = (calendar_body IS NULL))
+  ) STRICT`,
+  `INSERT INTO outbox_new (id, message_id, recipient, subject, text_body, html_body, calendar_method,
+      calendar_body, created_at, next_attempt_at, attempts, leased_until, sent_at, set_aside_at, last_error)
+    SELECT id, message_id, recipient, subject, text_body, html_body, calendar_method,
+      calendar_body, created_at, next_attempt_at, attempts, leased_until, sent_at, set_aside_at, last_error
+    FROM outbox`,
+  `DROP TABLE outbox`,
+  `ALTER TABLE outbox_new RENAME TO outbox`,
+  `CREATE INDEX outbox_due ON outbox (next_attempt_at) WHERE sent_at IS NULL AND set_aside_at IS NULL`,
+  `CREATE INDEX outbox_by_reply_to ON outbox (reply_to) WHERE reply_to IS NOT NULL`,
 ];
 
 export const migration0003: Migration = {

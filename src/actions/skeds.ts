@@ -4,6 +4,7 @@ import { services } from '../server/services';
 import { acceptSked } from '../server/skeds/acceptSked';
 import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
+import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
 import { messageSchema, postMessage } from '../server/skeds/postMessage';
 import { reportSked } from '../server/skeds/reportSked';
@@ -31,6 +32,12 @@ export const skeds = {
     const viewer = requirePerson(context);
     await declineSked(services(), viewer, id, answer);
     return done(id, 'declined');
+  }),
+
+  dropOut: formAction(answerForm, async ({ id, ...answer }, context) => {
+    const viewer = requirePerson(context);
+    await dropOutSked(services(), viewer, id, answer);
+    return done(id, 'dropped-out');
   }),
 
   withdraw: formAction(answerForm, async ({ id, ...answer }, context) => {

@@ -6,6 +6,8 @@ import type { FluxAt, NoiseMethod } from '../../domain/station/noiseRecord';
 import type { SkedEventKind, SkedResult, SkedState } from '../../domain/sked/types';
 
 export type Role = 'operator' | 'coordinator' | 'administrator';
+/** PUBLISH: the entries of a whole plan in one mail. */
+export type CalendarMethod = 'REQUEST' | 'CANCEL' | 'PUBLISH';
 /** What a mail is about: what a person can switch off, and what not. */
 export type MailTopic = 'account' | 'sked' | 'reminder' | 'digest' | 'talk' | 'activity';
 export type CrewRole = 'keeper' | 'operator';
@@ -142,6 +144,8 @@ export interface SkedEventTable {
   end_at: number;
   words: Generated<string>;
   at: number;
+  /** SEQUENCE of the newest calendar message after it. */
+  sequence: Generated<number>;
 }
 
 export interface SkedReportTable {
@@ -235,7 +239,7 @@ export interface OutboxTable {
   subject: string;
   text_body: string;
   html_body: string;
-  calendar_method: 'REQUEST' | 'CANCEL' | null;
+  calendar_method: CalendarMethod | null;
   calendar_body: string | null;
   created_at: number;
   next_attempt_at: number;

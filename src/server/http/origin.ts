@@ -28,6 +28,9 @@ const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, 
 /** Exactly one step below it: the token in the address is checked by the page itself. */
 const UNSUBSCRIBE = new RegExp(`^${paths.unsubscribe('[^/]+')}$`);
 
+/** Asked by programs that show a secret of their own in a header, which no page of somebody else's can. */
+const BY_SECRET: readonly string[] = [paths.api.inboundMail];
+
 interface Asked {
   method: string;
   pathname: string;
@@ -45,7 +48,7 @@ export function mayChange(
   publicUrl: string,
 ): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
-  if (OPEN_CALCULATORS.includes(pathname)) return true;
+  if (OPEN_CALCULATORS.includes(pathname) || BY_SECRET.includes(pathname)) return true;
   // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query.
   if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname) && search === '') return true;
   return isFromOwnPage(headers, publicUrl);

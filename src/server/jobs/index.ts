@@ -1,4 +1,5 @@
 import { sendDigests } from '../digest/sendDigests';
+import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
 import { smtpTransport } from '../mail/transport';
 import { keepReminders } from '../reminders/keepReminders';
@@ -36,6 +37,15 @@ export function jobsOf(services: Services): Job[] {
         return false;
       },
     },
+    ...(services.config.inbound.folder === null
+      ? []
+      : [
+          {
+            name: 'read mails that came in',
+            everyMs: 5 * SECOND_MS,
+            run: async () => (await readInboundFolder(services)) > 0,
+          },
+        ]),
     {
       name: 'keep reminders',
       everyMs: 20 * SECOND_MS,

@@ -1,5 +1,5 @@
 import { newId } from '../ids';
-import type { MailTopic } from '../db/tables';
+import type { CalendarMethod, MailTopic } from '../db/tables';
 import type { Services } from '../services';
 import type { Tx } from '../db/transaction';
 
@@ -10,7 +10,7 @@ export interface OutgoingMail {
   text: string;
   html: string;
   /** `method` must be the METHOD inside `body`, or mail programs ignore the entry. */
-  calendar?: { method: 'REQUEST' | 'CANCEL'; body: string };
+  calendar?: { method: CalendarMethod; body: string };
   /** Default: about the account, which cannot be switched off. */
   topic?: MailTopic;
   /** Whom and what it is about, so that an answer to the mail finds its way. */

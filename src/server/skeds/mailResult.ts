@@ -1,14 +1,12 @@
 import type { SaidResult } from '../../domain/sked/result';
 import { paths } from '../../paths';
 import type { Tx } from '../db/transaction';
-import { enqueueMail } from '../mail/outbox';
-import { renderMail } from '../mail/shell';
 import { resultMail } from '../mail/templates/resultMail';
 import { skedFacts } from '../mail/templates/skedFacts';
 import type { Services } from '../services';
 import { crewsOfSkeds } from './crews';
-import { linkForRecipient } from './linkForRecipient';
 import { loadSked } from './load';
+import { sendSkedMail } from './sendSkedMail';
 
 interface Reported {
   skedId: string;
@@ -35,23 +33,17 @@ export async function mailResult(tx: Tx, services: Services, reported: Reported)
     if (personId === reported.personId || stationIds.includes(reported.stationId)) continue;
     const reportDue = stationIds.some((id) => !reported.said.some((one) => one.stationId === id));
     const path = reportDue ? paths.skedReport(row.id) : paths.sked(row.id);
-    const url = await linkForRecipient(tx, services, member, row, path);
+    const url = services.config.publicUrl + path;
     const callSigns = stations
       .filter((station) => stationIds.includes(station.id))
       .map((station) => station.callSign);
-    const { subject, content } = resultMail(
-      skedFacts(row, stations, slot, url),
+    const facts = skedFacts(row, stations, slot, url);
+    const letter = resultMail(
+      facts,
       { ...said, words, personName, corrected },
       reported.disagreements,
       { timeZone: member.timeZone, callSigns, reportDue, url },
     );
-    await enqueueMail(tx, services, {
-      to: member.email,
-      subject,
-      ...renderMail(content),
-      topic: 'sked',
-      personId,
-      skedId: row.id,
-    });
+    await sendSkedMail(tx, services, { sked: row, facts, recipient: member, ...letter });
   }
 }

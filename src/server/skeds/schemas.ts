@@ -5,6 +5,7 @@ import { clockOfDay } from '../../domain/sked/moveChoice';
 import { LONGEST_REPORT } from '../../domain/sked/result';
 import { plainWords } from '../../domain/sked/talk';
 import { MINUTE_MS } from '../../domain/time/interval';
+import type { Tx } from '../db/transaction';
 
 /** What people may add to an offer or an answer. */
 export const wordsSchema = z
@@ -31,7 +32,12 @@ export const skedAnswerSchema = z.object({
   as: stationIdSchema.optional(),
   words: wordsSchema,
 });
-export type SkedAnswer = z.output<typeof skedAnswerSchema>;
+export type SkedAnswer = z.output<typeof skedAnswerSchema> & WithLink;
+
+/** What comes first in the transaction of a change made behind a link: using the link up. */
+export interface WithLink {
+  first?: ((tx: Tx) => Promise<void>) | undefined;
+}
 
 export const skedMoveSchema = skedAnswerSchema.extend({ start: instant, end: instant });
 

@@ -3,7 +3,7 @@ import type { SkedResult } from '../../../domain/sked/types';
 import { formatClock, formatDuration, formatUtcRange } from '../../../domain/time/format';
 import type { MailContent } from '../shell';
 import type { SkedMailFacts } from './skedFacts';
-import { skedTimes } from './skedTimes';
+import { skedRows } from './skedMail';
 
 /** The cautions in one line, for wherever transmitting is spoken of. */
 export const CAUTIONS_LINE =
@@ -34,11 +34,7 @@ export function beforeMail(
     content: {
       title: `Sked with ${partners} in ${left}`,
       paragraphs: [`It begins in ${left}, counted from ${formatClock(nowMs)} UTC.`],
-      facts: [
-        ...skedTimes(facts, reader.timeZone),
-        ['Band', facts.bandLabel],
-        ['Frequency and mode', `${facts.frequency}, ${facts.modeLabel}`],
-      ],
+      facts: [...skedRows(facts, reader.timeZone), ['Band', facts.bandLabel]],
       ...(links.account
         ? {
             button: { label: 'Open the sked sheet', url: links.sheet },
@@ -71,10 +67,7 @@ export function reportDueMail(
         `The report of ${listOf(reader.dueCallSigns)} is still to come: completed, partly or not heard.`,
         ...(heard.length > 0 ? [heard.join(' ')] : []),
       ],
-      facts: [
-        ...skedTimes(facts, reader.timeZone),
-        ['Frequency and mode', `${facts.frequency}, ${facts.modeLabel}`],
-      ],
+      facts: skedRows(facts, reader.timeZone),
       button: { label: 'Report how it went', url: links.account ? links.report : links.answer },
       footer: why(reader),
     },

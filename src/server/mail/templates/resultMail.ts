@@ -3,7 +3,7 @@ import type { SaidResult } from '../../../domain/sked/result';
 import { formatUtcRange } from '../../../domain/time/format';
 import type { MailContent } from '../shell';
 import type { SkedMailFacts } from './skedFacts';
-import { skedTimes } from './skedTimes';
+import { skedRows } from './skedMail';
 
 /** To the other parties when somebody has said how a sked went, or corrected it. */
 export function resultMail(
@@ -26,8 +26,7 @@ export function resultMail(
           : []),
       ],
       facts: [
-        ...skedTimes(facts, reader.timeZone),
-        ['Frequency and mode', `${facts.frequency}, ${facts.modeLabel}`],
+        ...skedRows(facts, reader.timeZone),
         ['Result', result],
         ...(said.reportSent ? [['Report sent', said.reportSent] as [string, string]] : []),
         ...(said.reportReceived

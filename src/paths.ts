@@ -36,8 +36,8 @@ export const paths = {
 
   skeds: '/skeds',
   sked: (id: string) => `/skeds/${id}`,
-  /** Page that asks for words and a second press: decline, withdraw or cancel. */
-  skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
+  /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
+  skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
   calendar: '/calendar',
 
@@ -87,6 +87,7 @@ export const paths = {
     skedMove: (id: string) => `/api/v1/skeds/${id}/move`,
     skedAccept: (id: string) => `/api/v1/skeds/${id}/accept`,
     skedDecline: (id: string) => `/api/v1/skeds/${id}/decline`,
+    skedDropOut: (id: string) => `/api/v1/skeds/${id}/drop-out`,
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,

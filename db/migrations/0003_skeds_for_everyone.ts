@@ -59,9 +59,11 @@ const statements = [
     start_at INTEGER NOT NULL,
     end_at INTEGER NOT NULL,
     words TEXT NOT NULL DEFAULT '',
-    at INTEGER NOT NULL
+    at INTEGER NOT NULL,
+    -- SEQUENCE of the newest calendar message after it.
+    sequence INTEGER NOT NULL DEFAULT 0
   ) STRICT`,
-  `INSERT INTO sked_event_new SELECT * FROM sked_event`,
+  `INSERT INTO sked_event_new SELECT *, 0 FROM sked_event`,
   `DROP TABLE sked_event`,
   `ALTER TABLE sked_event_new RENAME TO sked_event`,
   `CREATE INDEX sked_event_by_sked ON sked_event (sked_id, at)`,

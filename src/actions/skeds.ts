@@ -4,6 +4,7 @@ import { services } from '../server/services';
 import { acceptSked } from '../server/skeds/acceptSked';
 import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
+import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
@@ -30,6 +31,12 @@ export const skeds = {
     const viewer = requirePerson(context);
     await declineSked(services(), viewer, id, answer);
     return done(id, 'declined');
+  }),
+
+  dropOut: formAction(answerForm, async ({ id, ...answer }, context) => {
+    const viewer = requirePerson(context);
+    await dropOutSked(services(), viewer, id, answer);
+    return done(id, 'dropped-out');
   }),
 
   withdraw: formAction(answerForm, async ({ id, ...answer }, context) => {

@@ -15,6 +15,9 @@ const environmentSchema = z.object({
   SMTP_PASSWORD: z.string().optional(),
   SMTP_TLS: z.enum(['none', 'starttls', 'tls']).default('starttls'),
   MAIL_FROM: z.string().min(3),
+  INBOUND_ADDRESS: z.email().optional(),
+  INBOUND_SECRET: z.string().min(16).optional(),
+  INBOUND_FOLDER: z.string().optional(),
   MAIL_LEASE_SECONDS: z.coerce.number().min(1).max(3600).default(60),
   TRUST_PROXY: z.enum(['yes', 'no']).default('no'),
   CALCULATOR_REQUESTS_PER_MINUTE: z.coerce.number().int().min(1).default(120),
@@ -37,6 +40,15 @@ export interface Config {
     password: string | undefined;
     tls: 'none' | 'starttls' | 'tls';
     from: string;
+  };
+  /** Mail that comes in. */
+  inbound: {
+    /** Answers go to this address, with "+token" before the @ for each person and sked. Null: none are received. */
+    address: string | null;
+    /** What a mail server shows when it hands a mail in over HTTP. Null: that way is closed. */
+    secret: string | null;
+    /** Maildir that the worker empties. Null: that way is closed. */
+    folder: string | null;
   };
   /** How long a mail taken by the worker is its own; after that another attempt is made. */
   mailLeaseMs: number;
@@ -65,9 +77,10 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
   if (!parsed.success) {
     const wrong = parsed.error.issues.map((issue) => {
       const name = String(issue.path[0]);
-      return name in given
-        ? `${name} is "${given[name]}", which is not usable`
-        : `${name} is missing`;
+      if (!(name in given)) return `${name} is missing`;
+      return /SECRET|PASSWORD/.test(name)
+        ? `${name} is not usable`
+        : `${name} is "${given[name]}", which is not usable`;
     });
     throw new ConfigurationMissing(
       `Echotide cannot start: ${wrong.join('; ')}. .env.example explains each setting.`,
@@ -86,6 +99,11 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
       password: env.SMTP_PASSWORD,
       tls: env.SMTP_TLS,
       from: env.MAIL_FROM,
+    },
+    inbound: {
+      address: env.INBOUND_ADDRESS ?? null,
+      secret: env.INBOUND_SECRET ?? null,
+      folder: env.INBOUND_FOLDER === undefined ? null : path.resolve(env.INBOUND_FOLDER),
     },
     mailLeaseMs: env.MAIL_LEASE_SECONDS * 1000,
     trustProxy: env.TRUST_PROXY === 'yes',

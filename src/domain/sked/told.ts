@@ -65,11 +65,12 @@ export function situation(sked: SkedView): string {
   const partners = partnersOf(sked.parties);
   const last = sked.events.filter(isOffer).at(-1);
   const before = sked.events.filter(isOffer).at(-2);
+  if (sked.droppedOut) return droppedOutSituation(sked);
   switch (sked.state) {
     case 'offered': {
       if (!sked.waitsForViewer) {
         const waiting = sked.parties.filter((party) => party.answer === 'waiting');
-        return `${listOf(waiting.map((party) => party.callSign))} ${waiting.length === 1 ? 'has' : 'have'} not answered yet.`;
+        return `${left(sked)}${listOf(waiting.map((party) => party.callSign))} ${waiting.length === 1 ? 'has' : 'have'} not answered yet.`;
       }
       const who = last?.byViewer ? 'You' : (last?.personName ?? last?.callSign ?? partners);
       const ask = last?.byViewer ? 'ask' : 'asks';
@@ -78,7 +79,7 @@ export function situation(sked: SkedView): string {
       return `${who} ${ask} for this slot.`;
     }
     case 'agreed':
-      return 'Every station has accepted this slot. It stands in your calendar.';
+      return `${left(sked)}Every station ${sked.leftParties.length > 0 ? 'that is left ' : ''}has accepted this slot. It stands in your calendar.`;
     case 'declined': {
       const declined = sked.events.filter((event) => event.kind === 'declined').at(-1);
       const who = declined ? whoActed(declined) : partners;
@@ -93,6 +94,26 @@ export function situation(sked: SkedView): string {
     case 'reported':
       return `Reported: ${sked.reports.map((report) => `${report.callSign} ${RESULT_WORDS[report.result]}`).join(', ')}.`;
   }
+}
+
+/** "QC2FAR dropped out. ", or nothing. */
+function left(sked: SkedView): string {
+  const names = sked.leftParties.map((party) => party.callSign);
+  return names.length > 0 ? `${listOf(names)} dropped out. ` : '';
+}
+
+function droppedOutSituation(sked: SkedView): string {
+  const rest = listOf(sked.parties.map((party) => party.callSign));
+  const now: Record<SkedView['state'], string> = {
+    offered: `${rest} have yet to agree on the slot.`,
+    agreed: `${rest} keep the slot.`,
+    declined: `${rest} have not agreed on a slot.`,
+    withdrawn: 'The offer was taken back.',
+    lapsed: 'Its time came without agreement.',
+    cancelled: `${rest} cancelled the sked.`,
+    reported: `${rest} worked it.`,
+  };
+  return `You dropped out. ${now[sked.state]}`;
 }
 
 /** "15 min later than before", "the same start, 10 min longer". */
@@ -115,13 +136,14 @@ export interface NextStep {
 
 /** What happens next, in order; empty when nothing will. */
 export function nextSteps(sked: SkedView, nowMs: number): NextStep[] {
+  if (sked.droppedOut) return [];
   const lapse = {
     lead: `${formatUtc(sked.startMs)}.`,
     text: 'Without agreement the offer lapses, and everybody gets a mail.',
   };
   const work = {
     lead: `${formatUtcRange(sked)}.`,
-    text: 'Both stations are on frequency. Check T/R changeover before power.',
+    text: `${sked.parties.length > 2 ? 'All' : 'Both'} stations are on frequency. Check T/R changeover before power.`,
   };
   const report = {
     lead: `After ${formatUtc(sked.endMs)}.`,

@@ -144,6 +144,8 @@ export interface SkedEventTable {
   end_at: number;
   words: Generated<string>;
   at: number;
+  /** SEQUENCE of the newest calendar message after it. */
+  sequence: Generated<number>;
 }
 
 export interface SkedReportTable {

@@ -22,6 +22,7 @@ export async function eventsOf(
       'sked_event.end_at',
       'sked_event.words',
       'sked_event.at',
+      'sked_event.sequence',
       'station.call_sign',
       'person.name',
     ])

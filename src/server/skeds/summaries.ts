@@ -1,4 +1,4 @@
-import { hasLapsed } from '../../domain/sked/machine';
+import { hasLapsed, stillIn } from '../../domain/sked/standing';
 import type { SkedPartyView, SkedSummary } from '../../domain/sked/view';
 import type { Db } from '../db/connection';
 import type { SkedRow } from '../db/tables';
@@ -19,6 +19,7 @@ export async function summariesOf(
       'sked_party.sked_id',
       'sked_party.station_id',
       'sked_party.answer',
+      'sked_party.left_at',
       'station.call_sign',
       'station.time_zone',
     ])
@@ -32,7 +33,7 @@ export async function summariesOf(
     .execute();
   const reported = new Set(reports.map((report) => `${report.sked_id} ${report.station_id}`));
   return rows.map((row) => {
-    const own: SkedPartyView[] = parties
+    const all = parties
       .filter((party) => party.sked_id === row.id)
       .map((party) => ({
         stationId: party.station_id,
@@ -40,16 +41,25 @@ export async function summariesOf(
         timeZone: party.time_zone,
         answer: party.answer,
         mine: mine.has(party.station_id),
+        left: party.left_at !== null,
       }))
       .sort((a, b) => Number(b.mine) - Number(a.mine));
+    const still = stillIn(all).map(viewOf);
+    const left = all.filter((party) => party.left).map(viewOf);
     return {
-      ...summaryOf(row, own, nowMs),
+      ...summaryOf(row, still, nowMs),
+      leftParties: left,
+      droppedOut: left.some((party) => party.mine) && !still.some((party) => party.mine),
       reportDue:
         (row.state === 'agreed' || row.state === 'reported') &&
         row.end_at <= nowMs &&
-        own.some((party) => party.mine && !reported.has(`${row.id} ${party.stationId}`)),
+        still.some((party) => party.mine && !reported.has(`${row.id} ${party.stationId}`)),
     };
   });
+}
+
+function viewOf({ left: _, ...party }: SkedPartyView & { left: boolean }): SkedPartyView {
+  return party;
 }
 
 function summaryOf(row: SkedRow, parties: SkedPartyView[], nowMs: number) {

@@ -38,6 +38,7 @@ export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Pro
         .selectFrom('sked_party')
         .select('sked_id')
         .where('station_id', 'in', own)
+        .where('left_at', 'is', null)
         .where('answer', '=', 'waiting'),
     )
     .orderBy('start_at')
@@ -57,6 +58,7 @@ export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Pro
         )
         .select('sked_party.sked_id')
         .where('sked_party.station_id', 'in', own)
+        .where('sked_party.left_at', 'is', null)
         .where('sked_report.station_id', 'is', null),
     )
     .orderBy('start_at', 'desc')
@@ -100,6 +102,7 @@ export async function countWaiting({ db, now }: Services, viewer: Viewer): Promi
     .where('station_crew.person_id', '=', viewer.id)
     .where('sked.state', '=', 'offered')
     .where('sked.start_at', '>', now())
+    .where('sked_party.left_at', 'is', null)
     .where('sked_party.answer', '=', 'waiting')
     .executeTakeFirst();
   return row?.waiting ?? 0;

@@ -19,6 +19,8 @@ export interface SkedRecipient {
   email: string;
   name: string;
   timeZone: string;
+  /** Whether the person has no account and keeps a guest station. */
+  guest: boolean;
   /** Stations of the sked to whose crew the person belongs. */
   stationIds: string[];
 }

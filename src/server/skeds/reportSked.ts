@@ -2,14 +2,14 @@ import type { z } from 'zod';
 import type { Viewer } from '../auth/viewer';
 import type { Services } from '../services';
 import { changeSked, type ChangeOutcome } from './change';
-import type { skedReportSchema } from './schemas';
+import type { skedReportSchema, WithLink } from './schemas';
 
 /** Says how the sked went for one station; a later report of the same station replaces it. Throws as `changeSked`. */
 export function reportSked(
   services: Services,
   viewer: Viewer,
   skedId: string,
-  input: z.output<typeof skedReportSchema>,
+  input: z.output<typeof skedReportSchema> & WithLink,
 ): Promise<ChangeOutcome> {
   return changeSked(services, viewer, {
     skedId,

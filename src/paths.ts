@@ -37,7 +37,8 @@ export const paths = {
   skeds: '/skeds',
   sked: (id: string) => `/skeds/${id}`,
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
-  skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
+  skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
+    `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
   calendar: '/calendar',
 

@@ -159,7 +159,10 @@ export function nextSteps(sked: SkedView, nowMs: number): NextStep[] {
         ? 'You accept.'
         : `${others} ${waiting.length === 1 ? 'accepts' : 'accept'}.`;
       return [
-        { lead: accept, text: `The sked is agreed. ${both} a mail with a calendar entry.` },
+        {
+          lead: accept,
+          text: `The sked is agreed. ${both} a mail, and the calendar entry becomes firm.`,
+        },
         work,
         report,
         lapse,

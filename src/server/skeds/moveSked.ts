@@ -7,8 +7,7 @@ import { requireMoon, slotWarnings } from './slotCheck';
 
 /**
  * Offers another time for the sked; every other party has to answer again. An agreed slot is given up by it at once:
- * the booking is freed, everybody's calendar entry is cancelled, and the mail says so. When the new time is
- * agreed the entry comes back under the same UID. Throws as `changeSked`.
+ * the booking is freed, everybody's calendar entry moves to the new time as tentative, and the mail says so. Throws as `changeSked`.
  */
 export function moveSked(
   services: Services,

@@ -40,6 +40,8 @@ function sked(over: Partial<SkedView>): SkedView {
       { stationId: 'a', callSign: 'QA1LUN', timeZone: 'UTC', answer: 'waiting', mine: true },
       { stationId: 'b', callSign: 'QB7TID', timeZone: 'UTC', answer: 'accepted', mine: false },
     ],
+    leftParties: [],
+    droppedOut: false,
     waitsForViewer: true,
     reportDue: false,
     events: [],
@@ -47,6 +49,7 @@ function sked(over: Partial<SkedView>): SkedView {
     choices: {
       accept: 'a',
       decline: 'a',
+      dropOut: null,
       withdraw: null,
       cancel: null,
       move: 'a',

@@ -57,21 +57,28 @@ export function skedMail(
       title,
       paragraphs,
       facts: [
-        ['UTC', formatUtcRange(facts, { withYear: true })],
-        ...(recipient.timeZone === 'UTC'
-          ? []
-          : [['Your time', formatLocalRange(facts, recipient.timeZone)] as [string, string]]),
-        ...facts.stations.map(
-          ({ callSign, timeZone }) =>
-            [callSign, formatLocalRange(facts, timeZone)] as [string, string],
-        ),
-        ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
+        ...skedRows(facts, recipient.timeZone),
         ...(words && by ? [[`${by.personName} writes`, words] as [string, string]] : []),
       ],
       button: { label: button, url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(yourCallSigns)}.`,
     },
   };
+}
+
+/** When and on what, as every mail about a sked says it. */
+export function skedRows(facts: SkedMailFacts, timeZone: string): [string, string][] {
+  return [
+    ['UTC', formatUtcRange(facts, { withYear: true })],
+    ...(timeZone === 'UTC'
+      ? []
+      : [['Your time', formatLocalRange(facts, timeZone)] as [string, string]]),
+    ...facts.stations.map(
+      (station) =>
+        [station.callSign, formatLocalRange(facts, station.timeZone)] as [string, string],
+    ),
+    ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
+  ];
 }
 
 interface Told {

@@ -2,6 +2,7 @@
 export const paths = {
   home: '/',
   register: '/register',
+  registerWith: (email: string) => `/register?${new URLSearchParams({ email }).toString()}`,
   registered: '/registered',
   signIn: '/sign-in',
   signInLink: '/sign-in/link',
@@ -40,6 +41,14 @@ export const paths = {
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
     `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  /** For somebody without an account: one sked, one person. */
+  answer: (secret: string) => `/answer/${secret}`,
+  /** Page on which the other common windows and own limits stand. */
+  answerMove: (secret: string) => `/answer/${secret}/move`,
+  /** Ends all mail to somebody without an account. */
+  noMore: (token: string) => `/no-more/${token}`,
+  /** Offer to somebody without an account, as one plain form. */
+  newGuest: '/skeds/new-guest',
   calendar: '/calendar',
 
   stations: '/stations',

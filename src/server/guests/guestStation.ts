@@ -31,6 +31,10 @@ export async function stationForGuest(
 ): Promise<PartyStation> {
   const registered = await registeredStation(tx, guest);
   if (registered !== null) return describedStation(registered, guest);
+  if (guest.email === viewer.email) {
+    const message = 'That is your own address.';
+    throw new InvalidInput(message, [{ path: `${field}.email`, message }]);
+  }
   const person = await findPersonByEmail(tx, guest.email);
   if ((person && person.locked_at !== null) || (await isBlocked(tx, guest.email))) {
     const message = `${guest.email} cannot be written to.`;

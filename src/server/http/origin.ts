@@ -1,4 +1,5 @@
 import { paths } from '../../paths';
+import { isSecretPage } from './secretPages';
 
 const LOOPBACK = ['127.0.0.1', 'localhost', '[::1]'];
 
@@ -33,12 +34,20 @@ interface Asked {
 
 /**
  * Whether a request may change something: it comes from a page of ours. Browsers always tell the
- * origin of a POST from a form or a script; one that does not must at least say "same-origin".
+ * origin of a POST from a form or a script; one that does not must at least say "same-origin". On pages whose address
+ * is a secret that secret is what allows a change, and no cookie does.
  */
 export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
   if (OPEN_CALCULATORS.includes(pathname)) return true;
   const origin = headers.get('origin');
+  const site = headers.get('sec-fetch-site');
+  if (isSecretPage(pathname)) {
+    // A form on a page that tells nobody its address has the origin "null" (Fetch, 3.2).
+    if (origin === 'null') return site === null || site === 'same-origin';
+    // Mail servers post here by themselves (RFC 8058, 3.2).
+    if (origin === null && pathname.startsWith(paths.noMore(''))) return true;
+  }
   if (origin !== null) return ownOrigins(publicUrl).includes(origin);
-  return headers.get('sec-fetch-site') === 'same-origin';
+  return site === 'same-origin';
 }

@@ -113,6 +113,10 @@ async function partiesOf(
       stations.push(registered.find((station) => station.id === partner)!);
       continue;
     }
+    if (stations.some((station) => station.callSign === partner.callSign)) {
+      const message = `${partner.callSign} takes part already. Each station counts once.`;
+      throw new InvalidInput(message, [{ path: `with.${index}.callSign`, message }]);
+    }
     const station = await stationForGuest(
       tx,
       services,

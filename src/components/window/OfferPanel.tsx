@@ -141,7 +141,7 @@ function OfferForm({
         headers: { 'content-type': 'application/json' },
         body: JSON.stringify({
           station,
-          with: stations.flatMap((partner) => {
+          with: stations.flatMap((partner): unknown[] => {
             if (partner.guest) return [guestToOffer(partner, emails[partner.token] ?? '', band)];
             return partner.id === null || partner.id === station ? [] : [partner.id];
           }),

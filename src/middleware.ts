@@ -8,6 +8,7 @@ import { addSecurityHeaders } from './server/http/headers';
 import { isOwnHost, mayChange } from './server/http/origin';
 import { errorToJson } from './server/http/respond';
 import { signInPath } from './server/http/returnPath';
+import { isSecretPage, SECRET_PAGE_HEADERS } from './server/http/secretPages';
 import { newId } from './server/ids';
 import { log } from './server/log';
 import { services } from './server/services';
@@ -33,6 +34,9 @@ export const onRequest = defineMiddleware(async (context, next) => {
     addSecurityHeaders(headers, services().config);
     if (viewer) headers.set('cache-control', 'no-store');
     else if (isPage(headers)) headers.set('cache-control', 'private, no-cache');
+    if (isSecretPage(context.url.pathname)) {
+      for (const [name, value] of Object.entries(SECRET_PAGE_HEADERS)) headers.set(name, value);
+    }
   });
 });
 

@@ -1,5 +1,6 @@
+import { guests } from './guests';
 import { people } from './people';
 import { skeds } from './skeds';
 
 /** Forms that work without JavaScript, by topic. */
-export const server = { people, skeds };
+export const server = { guests, people, skeds };

@@ -23,6 +23,7 @@ import { peekToken } from '../server/people/tokens';
 import { unlockPerson } from '../server/people/unlockPerson';
 import { profileSchema, updateProfile } from '../server/people/updateProfile';
 import { services } from '../server/services';
+import { listMyStations } from '../server/stations/listMyStations';
 import { paths } from '../paths';
 import { formAction } from './form';
 
@@ -88,8 +89,11 @@ export const people = {
     async (input, context) => {
       openToAll(context);
       await limitLinks(context);
+      const { personId = '' } = await peekToken(services(), input.secret, 'confirmMail');
       await enterByLink(context, { ...input, purpose: 'confirmMail' });
-      return { goTo: paths.newStation };
+      // Whoever has answered without an account finds the skeds so far.
+      const stations = await listMyStations(services(), { id: personId });
+      return { goTo: stations.length > 0 ? `${paths.skeds}?done=registered` : paths.newStation };
     },
   ),
 

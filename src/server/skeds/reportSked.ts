@@ -8,7 +8,7 @@ import { TooManyRequests } from '../errors';
 import type { Services } from '../services';
 import { changeSked, type ChangeOutcome } from './change';
 import { mailResult } from './mailResult';
-import type { skedReportSchema } from './schemas';
+import type { skedReportSchema, WithLink } from './schemas';
 
 /** Reports of one station about one sked within a day: every one of them mails the others. */
 const MOST_A_DAY = 20;
@@ -16,7 +16,7 @@ const MOST_A_DAY = 20;
 type Signals = 'reportSent' | 'reportReceived';
 type Report = z.output<typeof skedReportSchema>;
 /** Reports of the signal may be left away. */
-type ReportInput = Omit<Report, Signals> & Partial<Pick<Report, Signals>>;
+export type ReportInput = Omit<Report, Signals> & Partial<Pick<Report, Signals>>;
 
 /**
  * Says how the sked went for one station; a later report of the same station replaces it, and the history keeps both.
@@ -26,7 +26,7 @@ export function reportSked(
   services: Services,
   viewer: Viewer,
   skedId: string,
-  given: ReportInput,
+  given: ReportInput & WithLink,
 ): Promise<ChangeOutcome> {
   const input: Report = { reportSent: '', reportReceived: '', ...given };
   return changeSked(services, viewer, {
@@ -34,6 +34,7 @@ export function reportSked(
     version: input.version,
     as: input.as,
     words: inWords(input),
+    first: given.first,
     command: (by) => ({ kind: 'report', by, version: input.version }),
     also: async (tx, by) => {
       const atMs = services.now();

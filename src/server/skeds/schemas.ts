@@ -6,6 +6,7 @@ import { LONGEST_REPORT } from '../../domain/sked/result';
 import { plainWords } from '../../domain/sked/talk';
 import { MINUTE_MS } from '../../domain/time/interval';
 import type { Tx } from '../db/transaction';
+import { guestSchema, type Guest } from '../guests/guestSchema';
 
 /** What people may add to an offer or an answer. */
 export const wordsSchema = z
@@ -84,10 +85,21 @@ export const skedReportSchema = skedAnswerSchema.extend({
   reportReceived: signalReport,
 });
 
+/** A registered station by its id, or somebody without an account. Problems are told of the one that was meant. */
+const partnerSchema = z.unknown().transform((given, context): string | Guest => {
+  const meant = typeof given === 'object' && given !== null ? guestSchema : stationIdSchema;
+  const parsed = meant.safeParse(given);
+  if (parsed.success) return parsed.data;
+  for (const { path, message } of parsed.error.issues) {
+    context.addIssue({ code: 'custom', path, message });
+  }
+  return z.NEVER;
+});
+
 export const skedOfferSchema = z.object({
   station: stationIdSchema,
   with: z
-    .array(stationIdSchema, 'Name at least one partner station.')
+    .array(partnerSchema, 'Name at least one partner station.')
     .min(1, 'Name at least one partner station.')
     .max(15, 'A sked takes at most 16 stations.'),
   band: z.enum(BAND_IDS, 'Choose one of the bands.'),

@@ -54,12 +54,12 @@ const messageIds = (sources: readonly string[]) =>
   sources.map((source) => /^Message-ID: (.+?)\r?$/m.exec(source)?.[1]);
 
 /** A sked whose one-hour reminder is due after so many milliseconds. */
-function dueIn(ms: number): Promise<string> {
+async function dueIn(ms: number): Promise<string> {
   const startMs = Date.now() + HOUR_MS + ms;
   world.clock.nowMs = Date.now() - 3 * HOUR_MS;
-  return agreedSked(world, [A, B], { startMs, endMs: startMs + 30 * MINUTE_MS }).finally(() => {
-    world.clock.nowMs = Date.now();
-  });
+  const id = await agreedSked(world, [A, B], { startMs, endMs: startMs + 30 * MINUTE_MS });
+  world.clock.nowMs = Date.now();
+  return id;
 }
 
 it('sends once what was queued before the worker was killed', async () => {

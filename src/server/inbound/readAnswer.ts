@@ -36,11 +36,15 @@ function readOne(text: string): CalendarAnswer | null {
           .replace(/^mailto:/i, '')
           .trim()
           .toLowerCase(),
-        partstat: String(attendee.getFirstParameter('partstat') ?? '').toUpperCase(),
+        partstat: textOf(attendee.getParameter('partstat')).toUpperCase(),
       })),
       comment: String(event.getFirstPropertyValue('comment') ?? '').trim(),
     };
   } catch {
     return null;
   }
+}
+
+function textOf(parameter: unknown): string {
+  return typeof parameter === 'string' ? parameter : '';
 }

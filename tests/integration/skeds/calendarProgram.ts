@@ -23,7 +23,10 @@ export function readEntry(body: string): Entry {
   const event = new ICAL.Event(component);
   const attendee = component.getFirstProperty('attendee');
   const text = (name: string) => String(component.getFirstPropertyValue(name));
-  const parameter = (name: string) => String(attendee?.getFirstParameter(name) ?? '');
+  const parameter = (name: string) => {
+    const value: unknown = attendee?.getParameter(name);
+    return typeof value === 'string' ? value : '';
+  };
   const stamp = component.getFirstPropertyValue('dtstamp') as ICAL.Time;
   return {
     method: String(calendar.getFirstPropertyValue('method')),

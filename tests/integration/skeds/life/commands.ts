@@ -155,21 +155,24 @@ class Wait extends Step {
   constructor(readonly minutes: number) {
     super();
   }
-  async step(model: Model, real: Real): Promise<void> {
+  step(model: Model, real: Real): Promise<void> {
     model.nowMs += this.minutes * MINUTE_MS;
     real.world.clock.nowMs = model.nowMs;
+    return Promise.resolve();
   }
   toString = () => `wait(${this.minutes})`;
 }
 
 /** Until a slot begins or ends, where most rules turn. */
 class WaitForSlot extends OnSked {
-  async step(model: Model, real: Real): Promise<void> {
+  step(model: Model, real: Real): Promise<void> {
     const { sked } = this.chosen(model, real, LIKED.cancel);
     const untilMs = [sked.startMs, sked.endMs].find((atMs) => atMs > model.nowMs);
-    if (untilMs === undefined || untilMs - model.nowMs > 72 * HOUR_MS) return;
-    model.nowMs = untilMs;
-    real.world.clock.nowMs = untilMs;
+    if (untilMs !== undefined && untilMs - model.nowMs <= 72 * HOUR_MS) {
+      model.nowMs = untilMs;
+      real.world.clock.nowMs = untilMs;
+    }
+    return Promise.resolve();
   }
   toString = () => `waitForSlot(${this.which})`;
 }

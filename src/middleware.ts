@@ -9,6 +9,7 @@ import { forgetKept } from './server/http/keptSheets';
 import { isOwnHost, mayChange } from './server/http/origin';
 import { errorToJson } from './server/http/respond';
 import { signInPath } from './server/http/returnPath';
+import { isSecretPage, SECRET_PAGE_HEADERS } from './server/http/secretPages';
 import { newId } from './server/ids';
 import { log } from './server/log';
 import { services } from './server/services';
@@ -35,6 +36,9 @@ export const onRequest = defineMiddleware(async (context, next) => {
     if (isPage(headers)) forgetKept(context.request, headers, viewer);
     if (viewer) headers.set('cache-control', 'no-store');
     else if (isPage(headers)) headers.set('cache-control', 'private, no-cache');
+    if (isSecretPage(context.url.pathname)) {
+      for (const [name, value] of Object.entries(SECRET_PAGE_HEADERS)) headers.set(name, value);
+    }
   });
 });
 
@@ -45,7 +49,12 @@ function refuseForeign({ request, url }: APIContext): void {
   }
   if (
     !mayChange(
-      { method: request.method, pathname: url.pathname, headers: request.headers },
+      {
+        method: request.method,
+        pathname: url.pathname,
+        search: url.search,
+        headers: request.headers,
+      },
       publicUrl,
     )
   ) {

@@ -2,6 +2,7 @@
 export const paths = {
   home: '/',
   register: '/register',
+  registerWith: (email: string) => `/register?${new URLSearchParams({ email }).toString()}`,
   registered: '/registered',
   signIn: '/sign-in',
   signInLink: '/sign-in/link',
@@ -66,6 +67,12 @@ export const paths = {
   live: '/live',
   /** For somebody without an account: one sked, one person. */
   answer: (secret: string) => `/answer/${secret}`,
+  /** Page on which the other common windows and own limits stand. */
+  answerMove: (secret: string) => `/answer/${secret}/move`,
+  /** Ends all mail to somebody without an account. */
+  noMore: (token: string) => `/no-more/${token}`,
+  /** Offer to somebody without an account, as one plain form. */
+  newGuest: '/skeds/new-guest',
   calendar: '/calendar',
   feed: (secret: string) => `/feeds/${secret}.ics`,
 

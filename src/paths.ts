@@ -9,6 +9,9 @@ export const paths = {
   signOut: '/sign-out',
   forgotten: '/forgotten',
   account: '/account',
+  /** Which mail the person wants. */
+  accountMail: '/account/mail',
+  unsubscribe: (token: string) => `/unsubscribe/${token}`,
   confirmMail: (secret: string) => `/confirm/${secret}`,
   useSignInLink: (secret: string) => `/sign-in/link/${secret}`,
   resetPassword: (secret: string) => `/reset/${secret}`,
@@ -36,6 +39,7 @@ export const paths = {
     `/outlook?${new URLSearchParams({ here, there, band }).toString()}`,
 
   skeds: '/skeds',
+  skedFile: (id: string) => `/skeds/${id}/sked.ics`,
   sked: (id: string) => `/skeds/${id}`,
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
@@ -49,7 +53,12 @@ export const paths = {
   noMore: (token: string) => `/no-more/${token}`,
   /** Offer to somebody without an account, as one plain form. */
   newGuest: '/skeds/new-guest',
+  skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedTalk: (id: string) => `/skeds/${id}#talk`,
+  skedReport: (id: string) => `/skeds/${id}#report`,
+  live: '/live',
   calendar: '/calendar',
+  feed: (secret: string) => `/feeds/${secret}.ics`,
 
   stations: '/stations',
   newStation: '/stations/new',
@@ -101,6 +110,9 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
+    /** Where a mail server hands in the mails that answer ours. */
+    inboundMail: '/api/v1/inbound/mail',
   },
 } as const;

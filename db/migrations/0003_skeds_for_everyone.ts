@@ -179,6 +179,7 @@ const statements = [
   `DROP TABLE outbox`,
   `ALTER TABLE outbox_new RENAME TO outbox`,
   `CREATE INDEX outbox_due ON outbox (next_attempt_at) WHERE sent_at IS NULL AND set_aside_at IS NULL`,
+  `CREATE INDEX outbox_by_reply_to ON outbox (reply_to) WHERE reply_to IS NOT NULL`,
 ];
 
 export const migration0003: Migration = {

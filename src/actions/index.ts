@@ -1,6 +1,7 @@
+import { feeds } from './feeds';
 import { guests } from './guests';
 import { people } from './people';
 import { skeds } from './skeds';
 
 /** Forms that work without JavaScript, by topic. */
-export const server = { guests, people, skeds };
+export const server = { feeds, guests, people, skeds };

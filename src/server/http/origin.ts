@@ -26,6 +26,9 @@ const SAFE_METHODS = ['GET', 'HEAD', 'OPTIONS'];
 /** Stateless computations; they change nothing, so anybody may call them from anywhere. */
 const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, paths.api.link];
 
+/** Asked by programs that show a secret of their own in a header, which no page of somebody else's can. */
+const BY_SECRET: readonly string[] = [paths.api.inboundMail];
+
 interface Asked {
   method: string;
   pathname: string;
@@ -39,7 +42,7 @@ interface Asked {
  */
 export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
-  if (OPEN_CALCULATORS.includes(pathname)) return true;
+  if (OPEN_CALCULATORS.includes(pathname) || BY_SECRET.includes(pathname)) return true;
   const origin = headers.get('origin');
   const site = headers.get('sec-fetch-site');
   if (isSecretPage(pathname)) {

@@ -1,3 +1,4 @@
+import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
 import { smtpTransport } from '../mail/transport';
 import type { Services } from '../services';
@@ -33,6 +34,15 @@ export function jobsOf(services: Services): Job[] {
         return false;
       },
     },
+    ...(services.config.inbound.folder === null
+      ? []
+      : [
+          {
+            name: 'read mails that came in',
+            everyMs: 5 * SECOND_MS,
+            run: async () => (await readInboundFolder(services)) > 0,
+          },
+        ]),
     {
       name: 'remove old tokens',
       everyMs: HOUR_MS,

@@ -30,7 +30,7 @@ export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLette
   await enqueueMail(tx, services, {
     to: recipient.email,
     subject,
-    ...renderMail(content),
+    ...renderMail(replyTo === null ? content : withReplyHint(content)),
     topic: 'sked',
     personId: recipient.personId,
     skedId: sked.id,
@@ -45,4 +45,10 @@ export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLette
         }
       : {}),
   });
+}
+
+/** People must know that what they answer is read by others. */
+function withReplyHint(content: MailContent): MailContent {
+  const hint = 'What you answer to this mail is shown to the other parties of the sked.';
+  return { ...content, footer: `${content.footer} ${hint}` };
 }

@@ -23,7 +23,10 @@ export function readEntry(body: string): Entry {
   const event = new ICAL.Event(component);
   const attendee = component.getFirstProperty('attendee');
   const text = (name: string) => String(component.getFirstPropertyValue(name));
-  const parameter = (name: string) => String(attendee?.getFirstParameter(name) ?? '');
+  const parameter = (name: string) => {
+    const value: unknown = attendee?.getParameter(name);
+    return typeof value === 'string' ? value : '';
+  };
   const stamp = component.getFirstPropertyValue('dtstamp') as ICAL.Time;
   return {
     method: String(calendar.getFirstPropertyValue('method')),
@@ -41,23 +44,30 @@ export function readEntry(body: string): Entry {
   };
 }
 
+/** What calendar programs show: for each person, for each UID. */
+export type Calendars = Map<string, Map<string, Entry>>;
+
 /**
- * What a calendar program shows to each person for each UID after these mails, whatever order they came in: the message
- * with the highest SEQUENCE counts, among equals the one with the latest DTSTAMP (RFC 5546, 2.1.5).
+ * Takes one message in, as a calendar program does whatever order they come in: the one with the highest SEQUENCE
+ * counts, among equals the one with the latest DTSTAMP (RFC 5546, 2.1.5).
  */
-export function calendarsAfter(mails: readonly OutboxRow[]): Map<string, Map<string, Entry>> {
-  const people = new Map<string, Map<string, Entry>>();
+export function takeIn(calendars: Calendars, recipient: string, entry: Entry): void {
+  const own = calendars.get(recipient) ?? new Map<string, Entry>();
+  const known = own.get(entry.uid);
+  const newer =
+    !known ||
+    entry.sequence > known.sequence ||
+    (entry.sequence === known.sequence && entry.stampMs >= known.stampMs);
+  if (newer) own.set(entry.uid, entry);
+  calendars.set(recipient, own);
+}
+
+/** What calendar programs show after these mails. */
+export function calendarsAfter(mails: readonly OutboxRow[]): Calendars {
+  const calendars: Calendars = new Map();
   for (const mail of mails) {
-    if (mail.calendar_body === null) continue;
-    const entry = readEntry(mail.calendar_body);
-    const own = people.get(mail.recipient) ?? new Map<string, Entry>();
-    const known = own.get(entry.uid);
-    const newer =
-      !known ||
-      entry.sequence > known.sequence ||
-      (entry.sequence === known.sequence && entry.stampMs >= known.stampMs);
-    if (newer) own.set(entry.uid, entry);
-    people.set(mail.recipient, own);
+    if (mail.calendar_body !== null)
+      takeIn(calendars, mail.recipient, readEntry(mail.calendar_body));
   }
-  return people;
+  return calendars;
 }

@@ -57,6 +57,11 @@ describe('mayChange', () => {
     ).toBe(false);
   });
 
+  it('leaves the way in for mails to the secret it asks for', () => {
+    expect(asks('POST', {}, paths.api.inboundMail)).toBe(true);
+    expect(asks('POST', {}, `${paths.api.inboundMail}/x`)).toBe(false);
+  });
+
   it('leaves the calculators open, and nothing beside them', () => {
     for (const open of [paths.api.moon, paths.api.windows, paths.api.link]) {
       expect(asks('POST', { origin: 'https://elsewhere.example' }, open)).toBe(true);

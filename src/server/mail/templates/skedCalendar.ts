@@ -5,6 +5,7 @@ import ical, {
   ICalEventStatus,
   ICalEventTransparency,
   type ICalCalendar,
+  type ICalEvent,
 } from 'ical-generator';
 import type { CalendarDue } from '../../../domain/sked/standing';
 import { formatLocalRange, formatUtcRange } from '../../../domain/time/format';
@@ -39,23 +40,39 @@ export function skedCalendar(
   return written(calendar);
 }
 
-/** A calendar to be read as it stands, without asking anybody: a feed, or one sked to download. */
-export function publishedCalendar(
-  name: string,
-  organizer: string,
-  skeds: readonly {
-    facts: SkedMailFacts;
-    recipient: Pick<SkedRecipient, 'email' | 'name'>;
-    entry: PersonalEntry;
-  }[],
-): string {
+export interface PublishedSked {
+  facts: SkedMailFacts;
+  /** Its `stampMs` is when the sked last changed. */
+  entry: PersonalEntry;
+  organizer: string;
+}
+
+/** A calendar to be read as it stands, without asking anybody: a feed, or one sked to download (RFC 5546, 3.2.1). */
+export function publishedCalendar(name: string, skeds: readonly PublishedSked[]): string {
   const calendar = newCalendar(ICalCalendarMethod.PUBLISH);
   calendar.name(name);
-  for (const { facts, recipient, entry } of skeds) {
-    addSked(calendar, facts, recipient, { ...entry, asked: false }, organizer, false);
+  calendar.ttl(REREAD_S);
+  for (const { facts, entry, organizer } of skeds) {
+    addSked(calendar, facts, null, entry, organizer).lastModified(new Date(entry.stampMs));
   }
-  return written(calendar);
+  const text = written(calendar);
+  return skeds.length > 0 ? text : text.replace('END:VCALENDAR', `${EMPTY}END:VCALENDAR`);
 }
+
+const REREAD_S = 3600;
+
+/** A calendar has at least one component (RFC 5545, 3.6); without a sked it is the zone that all times are in. */
+const EMPTY = [
+  'BEGIN:VTIMEZONE',
+  'TZID:UTC',
+  'BEGIN:STANDARD',
+  'DTSTART:19700101T000000',
+  'TZOFFSETFROM:+0000',
+  'TZOFFSETTO:+0000',
+  'END:STANDARD',
+  'END:VTIMEZONE',
+  '',
+].join('\r\n');
 
 function newCalendar(method: ICalCalendarMethod): ICalCalendar {
   return ical({
@@ -69,11 +86,10 @@ function newCalendar(method: ICalCalendarMethod): ICalCalendar {
 function addSked(
   calendar: ICalCalendar,
   facts: SkedMailFacts,
-  recipient: Pick<SkedRecipient, 'email' | 'name'>,
+  recipient: Pick<SkedRecipient, 'email' | 'name'> | null,
   entry: PersonalEntry,
   organizer: string,
-  withAttendee = true,
-): void {
+): ICalEvent {
   const callSigns = facts.stations.map((station) => station.callSign);
   const event = calendar.createEvent({
     id: facts.uid,
@@ -100,7 +116,7 @@ function addSked(
         ? ICalEventTransparency.OPAQUE
         : ICalEventTransparency.TRANSPARENT,
   });
-  if (!withAttendee) return;
+  if (!recipient) return event;
   event.createAttendee({
     email: recipient.email,
     name: parameterText(recipient.name),
@@ -108,6 +124,7 @@ function addSked(
     status: entry.asked ? ICalAttendeeStatus.NEEDSACTION : ICalAttendeeStatus.ACCEPTED,
     rsvp: entry.asked,
   });
+  return event;
 }
 
 const STATUS: Record<PersonalEntry['status'], ICalEventStatus> = {

@@ -49,7 +49,12 @@ function refuseForeign({ request, url }: APIContext): void {
   }
   if (
     !mayChange(
-      { method: request.method, pathname: url.pathname, headers: request.headers },
+      {
+        method: request.method,
+        pathname: url.pathname,
+        search: url.search,
+        headers: request.headers,
+      },
       publicUrl,
     )
   ) {

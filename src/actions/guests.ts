@@ -6,6 +6,7 @@ import { mailFreshLink } from '../server/guests/mailFreshLink';
 import { endMail } from '../server/guests/noMore';
 import { guestOfferFormSchema } from '../server/guests/offerForm';
 import { reportByLink } from '../server/guests/reportByLink';
+import { sayByLink } from '../server/guests/sayByLink';
 import { limitsSchema, saveLimits } from '../server/guests/saveLimits';
 import { clientKey } from '../server/http/clientAddress';
 import { limitRate } from '../server/http/rateLimit';
@@ -15,6 +16,7 @@ import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
 import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
+import { messageSchema } from '../server/skeds/postMessage';
 import { offerSked } from '../server/skeds/offerSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
 import { withdrawSked } from '../server/skeds/withdrawSked';
@@ -102,6 +104,15 @@ export const guests = {
     await limitLinks(context);
     return done(await reportByLink(services(), { secret, id }, said), 'reported');
   }),
+
+  say: formAction(
+    answered.extend(messageSchema.shape),
+    async ({ secret, id, ...said }, context) => {
+      openToAll(context);
+      await limitLinks(context);
+      return done(await sayByLink(services(), { secret, id }, said), 'said');
+    },
+  ),
 
   limits: formAction(z.intersection(bySecret, limitsSchema), async (input, context) => {
     openToAll(context);

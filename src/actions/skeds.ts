@@ -6,6 +6,7 @@ import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
 import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
+import { messageSchema, postMessage } from '../server/skeds/postMessage';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
 import { withdrawSked } from '../server/skeds/withdrawSked';
@@ -61,5 +62,11 @@ export const skeds = {
     const viewer = requirePerson(context);
     await reportSked(services(), viewer, id, said);
     return done(id, 'reported');
+  }),
+
+  say: formAction(skedId.extend(messageSchema.shape), async ({ id, ...message }, context) => {
+    const viewer = requirePerson(context);
+    await postMessage(services(), viewer, id, message);
+    return { goTo: `${paths.sked(id)}?done=said#talk` };
   }),
 };

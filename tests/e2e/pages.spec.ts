@@ -38,6 +38,13 @@ const PAGES: Checked[] = [
   { route: 'reset/[secret]', address: () => paths.resetPassword('none'), as: [null], status: 404 },
   { route: 'join/[secret]', address: () => paths.joinCrew('none'), as: ['Ylva'], status: 404 },
   { route: 'account', address: () => paths.account, as: ['Ylva', 'Osvin'] },
+  { route: 'account/mail', address: () => paths.accountMail, as: ['Ylva'] },
+  {
+    route: 'unsubscribe/[token]',
+    address: () => paths.unsubscribe('none'),
+    as: [null],
+    status: 404,
+  },
   {
     route: 'windows',
     address: () => paths.windowsWith(['QA1LUN', 'QB7TID'], '1296'),

@@ -2,6 +2,8 @@ import { z } from 'zod';
 import { BAND_IDS } from '../../domain/station/bands';
 import { MODE_IDS } from '../../domain/station/modes';
 import { clockOfDay } from '../../domain/sked/moveChoice';
+import { LONGEST_REPORT } from '../../domain/sked/result';
+import { plainWords } from '../../domain/sked/talk';
 import { MINUTE_MS } from '../../domain/time/interval';
 import type { Tx } from '../db/transaction';
 import { guestSchema, type Guest } from '../guests/guestSchema';
@@ -68,8 +70,19 @@ export const skedMoveFormSchema = skedAnswerSchema
     return { ...answer, start: startMs, end: startMs + length * MINUTE_MS };
   });
 
+const signalReport = z
+  .string('The report must be text, such as −21 or 529.')
+  .transform((text) => plainWords(text).replace(/\s+/g, ' '))
+  .refine(
+    (text) => [...text].length <= LONGEST_REPORT,
+    `Keep the report to ${LONGEST_REPORT} characters.`,
+  )
+  .default('');
+
 export const skedReportSchema = skedAnswerSchema.extend({
-  result: z.enum(['completed', 'partly', 'notHeard'], 'Say completed, partly or notHeard.'),
+  result: z.enum(['completed', 'partly', 'notHeard'], 'Say completed, partly or not heard.'),
+  reportSent: signalReport,
+  reportReceived: signalReport,
 });
 
 /** A registered station by its id, or somebody without an account. Problems are told of the one that was meant. */

@@ -48,7 +48,7 @@ export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLette
 }
 
 /** People must know that what they answer is read by others. */
-function withReplyHint(content: MailContent): MailContent {
+export function withReplyHint(content: MailContent): MailContent {
   const hint = 'What you answer to this mail is shown to the other parties of the sked.';
   return { ...content, footer: `${content.footer} ${hint}` };
 }

@@ -5,6 +5,7 @@ import { readSession } from './server/auth/session';
 import { Forbidden, NotFound, SignInNeeded, WrongHost } from './server/errors';
 import { failureOf } from './server/http/failure';
 import { addSecurityHeaders } from './server/http/headers';
+import { forgetKept } from './server/http/keptSheets';
 import { isOwnHost, mayChange } from './server/http/origin';
 import { errorToJson } from './server/http/respond';
 import { signInPath } from './server/http/returnPath';
@@ -34,6 +35,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
   return withHeaders(response, (headers) => {
     headers.set('x-request-id', requestId);
     addSecurityHeaders(headers, services().config);
+    if (isPage(headers)) forgetKept(context.request, headers, viewer);
     if (viewer) headers.set('cache-control', 'no-store');
     else if (isPage(headers)) headers.set('cache-control', 'private, no-cache');
     if (isSecretPage(context.url.pathname)) {

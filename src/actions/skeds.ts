@@ -9,6 +9,7 @@ import { moveSked } from '../server/skeds/moveSked';
 import { messageSchema, postMessage } from '../server/skeds/postMessage';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
+import { setSheet, sheetSettingsFormSchema } from '../server/skeds/setSheet';
 import { withdrawSked } from '../server/skeds/withdrawSked';
 import { paths } from '../paths';
 import { formAction } from './form';
@@ -68,5 +69,11 @@ export const skeds = {
     const viewer = requirePerson(context);
     await postMessage(services(), viewer, id, message);
     return { goTo: `${paths.sked(id)}?done=said#talk` };
+  }),
+
+  setSheet: formAction(sheetSettingsFormSchema, async ({ id, first, convention }, context) => {
+    const viewer = requirePerson(context);
+    await setSheet(services(), viewer, id, { eastFirst: first === 'east', convention });
+    return { goTo: `${paths.skedSheet(id)}?done=set` };
   }),
 };

@@ -1,6 +1,7 @@
 import { mkdirSync } from 'node:fs';
 import path from 'node:path';
 import { z } from 'zod';
+import type { Backoff } from './mail/backoff';
 
 const port = z.coerce.number().int().min(1).max(65535);
 
@@ -19,6 +20,8 @@ const environmentSchema = z.object({
   INBOUND_SECRET: z.string().min(16).optional(),
   INBOUND_FOLDER: z.string().optional(),
   MAIL_LEASE_SECONDS: z.coerce.number().min(1).max(3600).default(60),
+  MAIL_RETRY_FIRST_SECONDS: z.coerce.number().min(0.1).max(3600).default(15),
+  MAIL_RETRY_LONGEST_SECONDS: z.coerce.number().min(0.1).max(86_400).default(3600),
   TRUST_PROXY: z.enum(['yes', 'no']).default('no'),
   CALCULATOR_REQUESTS_PER_MINUTE: z.coerce.number().int().min(1).default(120),
   SIGN_IN_ATTEMPTS_PER_MINUTE: z.coerce.number().int().min(1).default(10),
@@ -52,6 +55,8 @@ export interface Config {
   };
   /** How long a mail taken by the worker is its own; after that another attempt is made. */
   mailLeaseMs: number;
+  /** How long a mail that was not taken waits for its next attempt. */
+  mailRetry: Backoff;
   /** Whether X-Forwarded-For comes from a proxy that sets it. */
   trustProxy: boolean;
   calculatorRequestsPerMinute: number;
@@ -105,7 +110,11 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
       secret: env.INBOUND_SECRET ?? null,
       folder: env.INBOUND_FOLDER === undefined ? null : path.resolve(env.INBOUND_FOLDER),
     },
-    mailLeaseMs: env.MAIL_LEASE_SECONDS * 1000,
+    mailLeaseMs: Math.round(env.MAIL_LEASE_SECONDS * 1000),
+    mailRetry: {
+      firstMs: Math.round(env.MAIL_RETRY_FIRST_SECONDS * 1000),
+      longestMs: Math.round(env.MAIL_RETRY_LONGEST_SECONDS * 1000),
+    },
     trustProxy: env.TRUST_PROXY === 'yes',
     calculatorRequestsPerMinute: env.CALCULATOR_REQUESTS_PER_MINUTE,
     signInAttemptsPerMinute: env.SIGN_IN_ATTEMPTS_PER_MINUTE,

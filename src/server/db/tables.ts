@@ -425,3 +425,7 @@ export type SkedPartyRow = Selectable<SkedPartyTable>;
 export type SkedEventRow = Selectable<SkedEventTable>;
 export type OutboxRow = Selectable<OutboxTable>;
 export type NewOutboxRow = Insertable<OutboxTable>;
+export type ActivityRow = Selectable<ActivityTable>;
+export type ActivityRevisionRow = Selectable<ActivityRevisionTable>;
+export type PlanRunRow = Selectable<PlanRunTable>;
+export type ActivitySlotRow = Selectable<ActivitySlotTable>;

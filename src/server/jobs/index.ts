@@ -1,6 +1,9 @@
+import { remindDueRosters } from '../activities/remindRoster';
+import { workPlanRuns } from '../activities/workPlanRuns';
 import { sendDigests } from '../digest/sendDigests';
 import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
+import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
 import { keepReminders } from '../reminders/keepReminders';
 import { queueReminders } from '../reminders/queueReminders';
@@ -29,6 +32,14 @@ export function jobsOf(services: Services): Job[] {
   }));
   return [
     ...carriers,
+    {
+      name: 'limit waits after a clock step',
+      everyMs: SECOND_MS,
+      run: async () => {
+        await limitWaits(services);
+        return false;
+      },
+    },
     {
       name: 'lapse offers whose time came',
       everyMs: 15 * SECOND_MS,
@@ -64,6 +75,19 @@ export function jobsOf(services: Services): Job[] {
       everyMs: 60 * SECOND_MS,
       run: async () => {
         await sendDigests(services);
+        return false;
+      },
+    },
+    {
+      name: 'compute plans',
+      everyMs: SECOND_MS,
+      run: () => workPlanRuns(services),
+    },
+    {
+      name: 'remind rosters before answers are due',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await remindDueRosters(services);
         return false;
       },
     },

@@ -49,7 +49,11 @@ export async function getSked(
       ...summary!,
       events: await eventsOf(db, skedId, viewer.id),
       reports: await reportsOf(db, skedId),
-      choices: choicesFor(loaded.sked, own, nowMs),
+      choices: {
+        ...choicesFor(loaded.sked, own, nowMs),
+        // Its coordinator moves the slots of a plan.
+        ...(loaded.row.activity_id === null ? {} : { move: null }),
+      },
     },
   };
 }

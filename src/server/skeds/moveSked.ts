@@ -1,5 +1,7 @@
 import type { z } from 'zod';
 import type { Viewer } from '../auth/viewer';
+import type { SkedRow } from '../db/tables';
+import { Conflict } from '../errors';
 import type { Services } from '../services';
 import { changeSked, type ChangeOutcome } from './change';
 import type { skedMoveSchema, WithLink } from './schemas';
@@ -20,9 +22,19 @@ export function moveSked(
     skedId,
     ...input,
     command: (by) => ({ kind: 'move', by, version: input.version, slot }),
-    check: (tx, { stations }) => {
+    check: (tx, { row, stations }) => {
+      refuseInPlan(row);
       requireMoon(stations, slot);
       return slotWarnings(tx, stations, slot, skedId);
     },
   });
+}
+
+/** A slot of a plan is moved by its coordinator, who sees what it does to the others. */
+function refuseInPlan(row: Pick<SkedRow, 'activity_id'>): void {
+  if (row.activity_id !== null) {
+    throw new Conflict(
+      'This slot belongs to the plan of an activity. Give it back if you cannot keep it; its coordinator finds another.',
+    );
+  }
 }

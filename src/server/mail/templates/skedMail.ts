@@ -60,6 +60,9 @@ export function skedMail(
       facts: [
         ...skedRows(facts, recipient.timeZone),
         ...(words && by ? [[`${by.personName} writes`, words] as [string, string]] : []),
+        ...(news.kind === 'agreed' && !recipient.guest
+          ? [['For the hour itself', facts.sheetUrl] as [string, string]]
+          : []),
       ],
       button: { label: button, url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(yourCallSigns)}.`,

@@ -19,15 +19,17 @@ export const onRequest = defineMiddleware(async (context, next) => {
   context.locals.requestId = context.request.headers.get('x-request-id') ?? newId();
   context.locals.viewer = null;
   let response: Response;
+  let reached = false;
   try {
     refuseForeign(context);
     context.locals.viewer = await readSession(context);
+    reached = true;
     response = await next();
     if (response.status === 404 && isApi(context) && !isJson(response)) {
       throw new NotFound('The API has nothing at this address.');
     }
   } catch (error) {
-    response = await answerFailure(context, next, error);
+    response = await answerFailure(context, next, error, reached);
   }
   const { requestId, viewer } = context.locals;
   return withHeaders(response, (headers) => {
@@ -68,6 +70,8 @@ async function answerFailure(
   context: APIContext,
   next: MiddlewareNext,
   error: unknown,
+  /** Whether the request came through to its page and action. */
+  reached: boolean,
 ): Promise<Response> {
   const { requestId } = context.locals;
   if (isApi(context)) return errorToJson(error, requestId);
@@ -78,7 +82,9 @@ async function answerFailure(
   }
   const failure = failureOf(error, requestId);
   if (failure.status === 500) log.error({ requestId, err: error }, 'request failed');
-  if (error instanceof WrongHost) return plain(failure.sentence, failure.status);
+  // Rendering a page runs the action that the request names, even when the page is that of the refusal.
+  const acts = !reached && context.request.method !== 'GET' && context.request.method !== 'HEAD';
+  if (error instanceof WrongHost || acts) return plain(failure.sentence, failure.status);
   context.locals.failure = failure;
   try {
     const cookie = context.request.headers.get('cookie') ?? '';

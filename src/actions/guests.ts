@@ -6,6 +6,7 @@ import { mailFreshLink } from '../server/guests/mailFreshLink';
 import { endMail } from '../server/guests/noMore';
 import { guestOfferFormSchema } from '../server/guests/offerForm';
 import { reportByLink } from '../server/guests/reportByLink';
+import { sayByLink } from '../server/guests/sayByLink';
 import { limitsSchema, saveLimits } from '../server/guests/saveLimits';
 import { clientKey } from '../server/http/clientAddress';
 import { limitRate } from '../server/http/rateLimit';
@@ -15,8 +16,8 @@ import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
 import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
+import { messageSchema } from '../server/skeds/postMessage';
 import { offerSked } from '../server/skeds/offerSked';
-import { messageSchema, postMessage } from '../server/skeds/postMessage';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
 import { withdrawSked } from '../server/skeds/withdrawSked';
 import { paths } from '../paths';
@@ -109,10 +110,7 @@ export const guests = {
     async ({ secret, id, ...said }, context) => {
       openToAll(context);
       await limitLinks(context);
-      const next = await answerByLink(services(), { secret, id }, (viewer, link) =>
-        postMessage(services(), viewer, id, { ...said, ...link }),
-      );
-      return done(next, 'said');
+      return done(await sayByLink(services(), { secret, id }, said), 'said');
     },
   ),
 

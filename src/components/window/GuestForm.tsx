@@ -139,7 +139,7 @@ export function GuestForm({ callSign: given, onChoose, onBack }: Props) {
         </Button>
       </div>
       <p className="field__note">
-        Without a picture: <a href={paths.newGuest}>one plain form for the whole offer</a>
+        Or enter everything in <a href={paths.newGuest}>one plain form for the whole offer</a>
       </p>
     </div>
   );

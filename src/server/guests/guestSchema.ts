@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import { type z } from 'zod';
 import { GUEST_DEFAULTS, guestHours, guestZone } from '../../domain/guest/guest';
 import { locatorToPosition } from '../../domain/locator/locator';
 import { record } from '../../domain/station/fields';

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { guestHours } from '../../domain/guest/guest';
+import { GUEST_DEFAULTS, guestHours } from '../../domain/guest/guest';
 import { slotOfFields } from '../../domain/sked/moveChoice';
 import { BAND_IDS } from '../../domain/station/bands';
 import { MODE_IDS } from '../../domain/station/modes';
@@ -39,7 +39,7 @@ export const guestOfferFormSchema = z
       email: form.email,
       locator: form.locator,
       ...(form.timeZone === '' ? {} : { timeZone: form.timeZone }),
-      ...(Object.keys(ranges).length > 0 ? { sky: ranges } : {}),
+      sky: { elevationFromDeg: GUEST_DEFAULTS.elevationFromDeg, ...ranges },
       hours: guestHours({ from: form.hoursFrom, to: form.hoursTo }),
     });
     for (const { path, message } of guest.error?.issues ?? []) {

@@ -1,5 +1,7 @@
+import type { TalkView } from '../../domain/sked/talk';
 import type { Services } from '../services';
 import { getSked } from '../skeds/getSked';
+import { talkOf } from '../skeds/talk';
 import { hoursOf, skyOf } from '../stations/records';
 import { findGuestLink, viewerOf, type GuestLink } from './guestLink';
 import type { StationRow } from '../db/tables';
@@ -20,6 +22,7 @@ export interface OwnGuestStation {
 export type Answer = GuestLink & {
   sked: Awaited<ReturnType<typeof getSked>>;
   own: OwnGuestStation | null;
+  talk: TalkView;
 };
 
 /** Everything the page behind a link shows; null for a link that is not one of ours. Changes nothing. */
@@ -37,7 +40,8 @@ export async function readAnswer(services: Services, secret: string): Promise<An
     .where('station.guest', '=', 1)
     .orderBy('sked_party.place')
     .executeTakeFirst();
-  return { ...link, sked, own: row ? ownStation(row) : null };
+  const talk = await talkOf(services, viewerOf(link.person), link.skedId);
+  return { ...link, sked, talk, own: row ? ownStation(row) : null };
 }
 
 function ownStation(row: StationRow): OwnGuestStation {

@@ -27,7 +27,7 @@ const SAFE_METHODS = ['GET', 'HEAD', 'OPTIONS'];
 const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, paths.api.link];
 
 /** Exactly one step below it: the token in the address is checked by the page itself. */
-const UNSUBSCRIBE = new RegExp(`^${paths.unsubscribe('[^/]+')}$`);
+const UNSUBSCRIBE = new RegExp(`^(${paths.unsubscribe('[^/]+')}|${paths.noMore('[^/]+')})$`);
 
 /** Asked by programs that show a secret of their own in a header, which no page of somebody else's can. */
 const BY_SECRET: readonly string[] = [paths.api.inboundMail];
@@ -41,8 +41,9 @@ interface Asked {
 }
 
 /**
- * Whether a request may change something: it comes from a page of ours, or carries what allows it by itself. On pages
- * whose address is a secret that secret is what allows a change, and no cookie does.
+ * Whether a request may change something: it comes from a page of ours. Browsers always tell the
+ * origin of a POST from a form or a script; one that does not must at least say "same-origin". On pages whose address
+ * is a secret that secret is what allows a change, and no cookie does.
  */
 export function mayChange(
   { method, pathname, search, headers }: Asked,
@@ -50,26 +51,19 @@ export function mayChange(
 ): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
   if (OPEN_CALCULATORS.includes(pathname) || BY_SECRET.includes(pathname)) return true;
-  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query, which could name
-  // an action of another page.
+  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query.
   if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname) && search === '') return true;
-  const origin = headers.get('origin');
-  if (isSecretPage(pathname)) {
-    const site = headers.get('sec-fetch-site');
-    // A form on a page that tells nobody its address has the origin "null" (Fetch, 3.2).
-    if (origin === 'null') return site === null || site === 'same-origin';
-    // Mail servers post here by themselves (RFC 8058, 3.2).
-    if (origin === null && search === '' && pathname.startsWith(paths.noMore(''))) return true;
+  // A form on a page that tells nobody its address has the origin "null" (Fetch, 3.2).
+  if (isSecretPage(pathname) && headers.get('origin') === 'null') {
+    return ['same-origin', null].includes(headers.get('sec-fetch-site'));
   }
   return isFromOwnPage(headers, publicUrl);
 }
 
-/**
- * Whether the browser says that a page of ours sent this. Browsers always tell the origin of a POST from a form or a
- * script; one that does not must at least say "same-origin".
- */
+/** Whether the browser says that a page of ours sent this. */
 export function isFromOwnPage(headers: Headers, publicUrl: string): boolean {
   const origin = headers.get('origin');
+  const site = headers.get('sec-fetch-site');
   if (origin !== null) return ownOrigins(publicUrl).includes(origin);
-  return headers.get('sec-fetch-site') === 'same-origin';
+  return site === 'same-origin';
 }

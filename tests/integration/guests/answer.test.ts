@@ -87,7 +87,7 @@ describe('answering behind a link', () => {
     await reportByLink(
       world.services,
       { secret: secretIn(path), id },
-      { version: 2, result: 'completed', words: 'O' },
+      { version: 2, result: 'completed', reportSent: 'O', reportReceived: '', words: 'RRR' },
     );
     expect(await stateOf()).toBe('reported');
     const mails = await mailsTo(world, GUEST.email);

@@ -98,3 +98,18 @@ describe('mayChange', () => {
     }
   });
 });
+
+describe('pages whose address is a secret', () => {
+  it('take the origin "null" of their own forms, and nobody else does', () => {
+    for (const page of ['/answer/secret', '/answer/secret/move', '/no-more/token']) {
+      expect(asks('POST', { origin: 'null' }, page)).toBe(true);
+      expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'same-origin' }, page)).toBe(true);
+      expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'cross-site' }, page)).toBe(false);
+      expect(asks('POST', { origin: 'https://elsewhere.example' }, page)).toBe(false);
+    }
+    expect(asks('POST', { origin: 'null' })).toBe(false);
+    expect(asks('POST', {}, '/answer/secret')).toBe(false);
+    expect(asks('POST', {}, '/no-more/token')).toBe(true);
+    expect(asks('POST', {}, '/no-more/token', '?_action=people.signIn')).toBe(false);
+  });
+});

@@ -1,3 +1,4 @@
+import { actorName } from '../../../domain/sked/told';
 import { listOf, RESULT_WORDS } from '../../../domain/sked/view';
 import type { SaidResult } from '../../../domain/sked/result';
 import { formatUtcRange } from '../../../domain/time/format';
@@ -19,7 +20,7 @@ export function resultMail(
     content: {
       title: `${said.callSign} ${verb}: ${result}`,
       paragraphs: [
-        `${said.personName}, ${said.callSign}, ${said.corrected ? 'corrected the result of' : 'says how'} your sked${said.corrected ? '' : ' went'}.`,
+        `${actorName(said)} ${said.corrected ? 'corrected the result of' : 'says how'} your sked${said.corrected ? '' : ' went'}.`,
         ...disagreements,
         ...(reader.reportDue
           ? ['Your own report is still to come; until then the result stands on one side alone.']
@@ -33,9 +34,7 @@ export function resultMail(
           ? [['Report received', said.reportReceived] as [string, string]]
           : []),
       ],
-      ...(said.words
-        ? { quote: { by: `${said.personName}, ${said.callSign}, writes`, words: said.words } }
-        : {}),
+      ...(said.words ? { quote: { by: `${actorName(said)} writes`, words: said.words } } : {}),
       button: {
         label: reader.reportDue ? 'Report how it went' : 'Open the sked',
         url: reader.url,

@@ -1,3 +1,4 @@
+import { actorName } from '../../../domain/sked/told';
 import { listOf } from '../../../domain/sked/view';
 import { formatUtcRange } from '../../../domain/time/format';
 import type { MailContent } from '../shell';
@@ -16,7 +17,7 @@ export function talkMail(
       title: `${by.callSign} writes about the sked`,
       paragraphs: [],
       facts: skedRows(facts, reader.timeZone),
-      quote: { by: `${by.personName}, ${by.callSign}, writes`, words: by.words },
+      quote: { by: `${actorName(by)} writes`, words: by.words },
       button: { label: 'Open the sked', url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(reader.callSigns)}.`,
     },

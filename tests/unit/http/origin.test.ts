@@ -101,7 +101,7 @@ describe('mayChange', () => {
 
 describe('pages whose address is a secret', () => {
   it('take the origin "null" of their own forms, and nobody else does', () => {
-    for (const page of ['/answer/secret', '/answer/secret/move', '/no-more/token']) {
+    for (const page of ['/answer/secret', '/answer/secret/move']) {
       expect(asks('POST', { origin: 'null' }, page)).toBe(true);
       expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'same-origin' }, page)).toBe(true);
       expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'cross-site' }, page)).toBe(false);

@@ -46,8 +46,6 @@ export const paths = {
   /** With the ledgers of two of its stations. */
   skedPair: (id: string, first: string, second: string) =>
     `/skeds/${id}?pair=${encodeURIComponent(`${first},${second}`)}#pair-heading`,
-  /** Page that asks for words and a second press: decline, withdraw or cancel. */
-  skedStep: (id: string, step: 'decline' | 'withdraw' | 'cancel') => `/skeds/${id}/${step}`,
   skedMove: (id: string) => `/skeds/${id}/move`,
   skedSheet: (id: string) => `/skeds/${id}/sheet`,
   skedTalk: (id: string) => `/skeds/${id}#talk`,

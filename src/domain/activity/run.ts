@@ -1,4 +1,5 @@
 import type { PlanInput } from './plan/input';
+import type { Favour } from './weights';
 import type { PlanProblem, PlanProgress, PlanSlot, PlanWeights } from './plan/types';
 
 /** What is kept of a run, so that it can be replayed: all that its plan depends on. */
@@ -7,6 +8,8 @@ export interface SavedRun {
   pinned: PlanSlot[];
   keep: PlanSlot[];
   weights: PlanWeights;
+  /** What is favoured where not every wish has room. */
+  favour: Favour;
   /** What follows from it; null until the run has begun. */
   problem: PlanProblem | null;
 }

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { figure, record } from '../station/fields';
-import type { PlanPriority, PlanWeights } from './plan/types';
+import type { PlanPriority, PlanProblem, PlanWeights } from './plan/types';
 
 /** What the plan looks at when it cannot place every wish. */
 export const FAVOURS = ['both', 'chance', 'priority'] as const;
@@ -65,9 +65,17 @@ export function planPriority(priority: PlanPriority, { favour }: ActivityWeights
 }
 
 /**
- * The chance that an option has in the plan. With priorities first, half of it is given to every start, so that the
- * chance only decides among wishes of one priority.
+ * The problem as it is solved. With priorities first, half of the chance is given to every start, so that the chance
+ * only decides among wishes of one priority.
  */
-export function planChance(chance: number, { favour }: ActivityWeights): number {
-  return favour === 'priority' ? Math.round(50 + 50 * chance) / 100 : chance;
+export function favoured(problem: PlanProblem, favour: Favour): PlanProblem {
+  if (favour !== 'priority') return problem;
+  const wishes = problem.wishes.map((wish) => ({
+    ...wish,
+    options: wish.options.map((option) => ({
+      ...option,
+      chance: Math.round(50 + 50 * option.chance) / 100,
+    })),
+  }));
+  return { ...problem, wishes };
 }

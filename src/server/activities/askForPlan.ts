@@ -57,6 +57,7 @@ export async function askForPlan(
       pinned: slots.filter(fixed).map(planSlot),
       keep: how === 'around' ? slots.filter((slot) => !fixed(slot)).map(planSlot) : [],
       weights: planWeights(weights),
+      favour: weights.favour,
       problem: null,
     };
     const runId = newId();

@@ -1,7 +1,12 @@
 import { paths } from '../../paths';
 
-/** Pages whose address is a secret from a mail and lets its holder act without signing in. */
-const SECRET_PAGES = [paths.answer(''), paths.noMore('')];
+/** Pages whose address is a secret from a mail and lets its holder act. */
+const SECRET_PAGES = [
+  paths.answer(''),
+  paths.noMore(''),
+  paths.rosterAnswer(''),
+  paths.joinCrew(''),
+];
 
 export function isSecretPage(pathname: string): boolean {
   return SECRET_PAGES.some((beginning) => pathname.startsWith(beginning));

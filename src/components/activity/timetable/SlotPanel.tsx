@@ -119,10 +119,7 @@ export function SlotPanel({ view, wishId, heldMs, nowMs, change }: Props) {
             ) : null}
             {slot ? (
               <>
-                <Button
-                  onClick={() => change({ kind: 'pin', wishId, pinned: !slot.pinned })}
-                  aria-pressed={slot.pinned}
-                >
+                <Button onClick={() => change({ kind: 'pin', wishId, pinned: !slot.pinned })}>
                   {slot.pinned ? 'Let it move' : 'Fix it'}
                 </Button>
                 <Button look="harmful" onClick={() => change({ kind: 'remove', wishId })}>

@@ -2,6 +2,7 @@
 export const paths = {
   home: '/',
   register: '/register',
+  registerWith: (email: string) => `/register?${new URLSearchParams({ email }).toString()}`,
   registered: '/registered',
   signIn: '/sign-in',
   signInLink: '/sign-in/link',
@@ -43,13 +44,35 @@ export const paths = {
   /** Page that asks for words and a second press: decline, drop out, withdraw or cancel. */
   skedStep: (id: string, step: 'decline' | 'drop-out' | 'withdraw' | 'cancel') =>
     `/skeds/${id}/${step}`,
+  /** With the ledgers of two of its stations. */
+  skedPair: (id: string, first: string, second: string) =>
+    `/skeds/${id}?pair=${encodeURIComponent(`${first},${second}`)}#pair-heading`,
   skedMove: (id: string) => `/skeds/${id}/move`,
+  /** Everything for the hour itself, to print or to keep offline. */
   skedSheet: (id: string) => `/skeds/${id}/sheet`,
+  skedLive: (id: string) => `/skeds/${id}/live`,
+  /** The Moon's track as CSV; without a station the viewer's own. */
+  skedTrack: (id: string, stationId?: string, stepS?: number) => {
+    const query = new URLSearchParams({
+      ...(stationId ? { station: stationId } : {}),
+      ...(stepS ? { step: String(stepS) } : {}),
+    }).toString();
+    return `/skeds/${id}/track.csv${query ? `?${query}` : ''}`;
+  },
+  /** The script that keeps sheets, and what it watches over. */
+  sheetKeeper: '/skeds/keeper.js',
+  sheetKeeperScope: '/skeds/',
   skedTalk: (id: string) => `/skeds/${id}#talk`,
   skedReport: (id: string) => `/skeds/${id}#report`,
   live: '/live',
   /** For somebody without an account: one sked, one person. */
   answer: (secret: string) => `/answer/${secret}`,
+  /** Page on which the other common windows and own limits stand. */
+  answerMove: (secret: string) => `/answer/${secret}/move`,
+  /** Ends all mail to somebody without an account. */
+  noMore: (token: string) => `/no-more/${token}`,
+  /** Offer to somebody without an account, as one plain form. */
+  newGuest: '/skeds/new-guest',
   calendar: '/calendar',
   feed: (secret: string) => `/feeds/${secret}.ics`,
 
@@ -129,6 +152,8 @@ export const paths = {
     skedWithdraw: (id: string) => `/api/v1/skeds/${id}/withdraw`,
     skedCancel: (id: string) => `/api/v1/skeds/${id}/cancel`,
     skedReport: (id: string) => `/api/v1/skeds/${id}/report`,
+    skedSheet: (id: string) => `/api/v1/skeds/${id}/sheet`,
+    clock: '/api/v1/clock',
     skedMessages: (id: string) => `/api/v1/skeds/${id}/messages`,
     calendar: '/api/v1/calendar',
     /** The draft of its plan, as the timetable changes it. */

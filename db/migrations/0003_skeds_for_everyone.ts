@@ -89,6 +89,15 @@ const statements = [
     used_at INTEGER
   ) STRICT`,
   `CREATE INDEX guest_link_by_person ON guest_link (person_id)`,
+  // When somebody first offered a sked to somebody without an account: how many is limited.
+  `CREATE TABLE guest_offer (
+    by_person_id TEXT NOT NULL REFERENCES person (id) ON DELETE CASCADE,
+    to_person_id TEXT NOT NULL REFERENCES person (id) ON DELETE CASCADE,
+    first_at INTEGER NOT NULL,
+    PRIMARY KEY (by_person_id, to_person_id)
+  ) STRICT`,
+  // Name and zone typed on registering, applied when the address is confirmed: until then anybody may have typed them.
+  `ALTER TABLE person_token ADD COLUMN registration_json TEXT CHECK (json_valid(registration_json))`,
   // Addresses that want no mail from people they do not know.
   `CREATE TABLE mail_block (
     email TEXT PRIMARY KEY CHECK (email = lower(email)),

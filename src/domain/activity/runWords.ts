@@ -2,6 +2,9 @@ import { formatNumber } from '../time/format';
 import type { PlanPhase, PlanProgress } from './plan/types';
 import type { RunState, RunView } from './run';
 
+/** A gap that is shown as 0.0 %. */
+const PROVEN_GAP = 0.0005;
+
 const PHASE_WORDS: Record<PlanPhase, string> = {
   greedy: 'a first plan, wish by wish',
   search: 'moving and swapping slots',
@@ -30,7 +33,7 @@ export function runSentence(run: RunView): string {
         ? 'Stopped. The best plan until then is the draft.'
         : 'Stopped before there was a plan.';
     case 'done':
-      return run.progress?.gap === 0
+      return (run.progress?.gap ?? 1) < PROVEN_GAP
         ? 'Done. No plan is worth more than this draft.'
         : 'Done. The best plan that was found is the draft.';
   }
@@ -48,12 +51,12 @@ export function progressFacts(
 ): [term: string, value: string][] {
   return [
     ['Wishes with a slot', `${progress.placed} of ${wishes}`],
-    ['Best so far', formatNumber(progress.objective, 1)],
+    ['Worth, priority × chance summed', formatNumber(progress.objective, 1)],
     [
       'No plan is over',
       progress.bound === null ? 'not known yet' : formatNumber(progress.bound, 1),
     ],
-    ['At most this is missing', gapText(progress.gap)],
+    ['Missing to that at most', gapText(progress.gap)],
     ['Time', `${formatNumber(progress.elapsedMs / 1000)} s`],
   ];
 }

@@ -16,37 +16,35 @@ export interface ReminderTime {
   dueMs: number;
 }
 
-/**
- * The reminders of one agreed sked for one person. `sinceMs`: since when all of it holds (the agreement, the place in
- * the crew, the preference); what would have been due by then is left out, because its moment was never there.
- */
+/** The reminders of one agreed sked for one person who wants mail of this kind, whatever the time is now. */
 export function reminderTimes(
   slot: Interval,
-  preference: Pick<MailPreference, 'topics' | 'reminderMinutes' | 'reportReminders'>,
-  sinceMs: number,
+  wish: Pick<MailPreference, 'topics' | 'reminderMinutes' | 'reportReminders'>,
 ): ReminderTime[] {
-  if (!preference.topics.reminder) return [];
-  const before = preference.reminderMinutes.map((minutes): ReminderTime => ({
-    kind: 'before',
-    minutes,
-    dueMs: slot.startMs - minutes * MINUTE_MS,
-  }));
-  const after = (preference.reportReminders ? REPORT_REMINDER_MINUTES : []).map(
-    (minutes): ReminderTime => ({
-      kind: 'report',
-      minutes,
-      dueMs: slot.endMs + minutes * MINUTE_MS,
-    }),
+  if (!wish.topics.reminder) return [];
+  const before = wish.reminderMinutes.map((minutes): ReminderTime => {
+    return { kind: 'before', minutes, dueMs: slot.startMs - minutes * MINUTE_MS };
+  });
+  const after = (wish.reportReminders ? REPORT_REMINDER_MINUTES : []).map(
+    (minutes): ReminderTime => {
+      return { kind: 'report', minutes, dueMs: slot.endMs + minutes * MINUTE_MS };
+    },
   );
-  return [...before, ...after].filter(({ dueMs }) => dueMs > sinceMs);
+  return [...before, ...after];
 }
 
-/** Whether a reminder that is due still makes sense: the start is ahead, or the report not long overdue. */
-export function isStillOfUse(
-  kind: ReminderKind,
-  dueMs: number,
-  slot: Interval,
-  nowMs: number,
-): boolean {
+/** Whether a reminder makes sense at an instant: the start is ahead, or the report not long overdue. */
+export function isOfUse(kind: ReminderKind, dueMs: number, slot: Interval, nowMs: number): boolean {
   return kind === 'before' ? slot.startMs > nowMs : nowMs - dueMs < REPORT_LATEST_MS;
+}
+
+/**
+ * Of reminders of one kind that are due together (the worker was down for longer than lies between them) the one that
+ * tells the newest; the others have nothing to add.
+ */
+export function newestOf<T extends Pick<ReminderTime, 'kind' | 'minutes'>>(due: readonly T[]): T {
+  return due.reduce((best, one) => {
+    const newer = one.kind === 'before' ? one.minutes < best.minutes : one.minutes > best.minutes;
+    return newer ? one : best;
+  });
 }

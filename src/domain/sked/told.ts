@@ -29,11 +29,18 @@ function isOffer(event: SkedEventView): boolean {
   return event.kind === 'offered' || event.kind === 'moved';
 }
 
+/** "Edda, QB7TID"; the call sign alone where nobody has given a name for it. */
+export function actorName(by: { personName: string | null; callSign: string }): string {
+  return by.personName && by.personName !== by.callSign
+    ? `${by.personName}, ${by.callSign}`
+    : by.callSign;
+}
+
 /** "You", "Edda, QB7TID", or "Nobody" where time alone acted. */
 export function whoActed(event: SkedEventView): string {
   if (event.byViewer) return 'You';
   if (!event.callSign) return '';
-  return event.personName ? `${event.personName}, ${event.callSign}` : event.callSign;
+  return actorName({ personName: event.personName, callSign: event.callSign });
 }
 
 /** The history without the "agreed" that follows from the last acceptance. */

@@ -23,6 +23,8 @@ export interface SkedSummary extends Interval {
   waitsForViewer: boolean;
   /** Whether a report of one of the viewer's stations is still to come. */
   reportDue: boolean;
+  /** Where the parties' results contradict each other, in sentences. */
+  disagreements: string[];
 }
 
 export interface SkedPartyView {
@@ -48,6 +50,9 @@ export interface SkedReportView {
   stationId: string;
   callSign: string;
   result: SkedResult;
+  /** As typed, empty where none was given. */
+  reportSent: string;
+  reportReceived: string;
   words: string;
   atMs: number;
 }

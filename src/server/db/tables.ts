@@ -34,6 +34,8 @@ export interface PersonTokenTable {
   created_at: number;
   expires_at: number;
   used_at: number | null;
+  /** Name and time zone typed on registering, until the address is confirmed. */
+  registration_json: Generated<string | null>;
 }
 
 export interface StationTable {
@@ -178,6 +180,13 @@ export interface GuestLinkTable {
   created_at: number;
   expires_at: number;
   used_at: number | null;
+}
+
+/** When somebody first offered a sked to somebody without an account. */
+export interface GuestOfferTable {
+  by_person_id: string;
+  to_person_id: string;
+  first_at: number;
 }
 
 export interface MailBlockTable {
@@ -388,6 +397,7 @@ export interface Tables {
   sked_report: SkedReportTable;
   sked_message: SkedMessageTable;
   guest_link: GuestLinkTable;
+  guest_offer: GuestOfferTable;
   mail_block: MailBlockTable;
   mail_preference: MailPreferenceTable;
   digest_sent: DigestSentTable;

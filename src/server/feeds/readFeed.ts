@@ -35,7 +35,7 @@ export async function readFeed(services: Services, secret: string): Promise<Read
     .where('person.locked_at', 'is', null)
     .executeTakeFirst();
   const crews = feed ? await stationIdsOf(services.db, feed.person_id) : new Set<string>();
-  const lost = feed?.station_id != null && !crews.has(feed.station_id);
+  const lost = feed && feed.station_id !== null && !crews.has(feed.station_id);
   if (!feed || lost) throw new NotFound('There is no calendar at this address.');
   await noteReading(services, feed);
   const stationIds = feed.station_id === null ? [...crews] : [feed.station_id];

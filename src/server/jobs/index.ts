@@ -1,9 +1,12 @@
 import { remindDueRosters } from '../activities/remindRoster';
 import { workPlanRuns } from '../activities/workPlanRuns';
+import { sendDigests } from '../digest/sendDigests';
 import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
 import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
+import { keepReminders } from '../reminders/keepReminders';
+import { queueReminders } from '../reminders/queueReminders';
 import type { Services } from '../services';
 import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
 import { beat } from './heartbeat';
@@ -54,6 +57,27 @@ export function jobsOf(services: Services): Job[] {
             run: async () => (await readInboundFolder(services)) > 0,
           },
         ]),
+    {
+      name: 'keep reminders',
+      everyMs: 20 * SECOND_MS,
+      run: async () => {
+        await keepReminders(services);
+        return false;
+      },
+    },
+    {
+      name: 'queue reminders',
+      everyMs: 5 * SECOND_MS,
+      run: async () => (await queueReminders(services)) > 0,
+    },
+    {
+      name: 'send digests',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await sendDigests(services);
+        return false;
+      },
+    },
     {
       name: 'compute plans',
       everyMs: SECOND_MS,

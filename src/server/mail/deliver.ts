@@ -2,6 +2,7 @@ import { sql } from 'kysely';
 import type { Db } from '../db/connection';
 import type { OutboxRow } from '../db/tables';
 import { log } from '../log';
+import { dropOutdated } from '../reminders/dropOutdated';
 import type { Services } from '../services';
 import { backoffMs } from './backoff';
 import { NotTaken, type SendMail } from './transport';
@@ -48,6 +49,7 @@ async function lease({ db, now }: Services, options: DeliverOptions): Promise<Ou
 
 async function deliver(services: Services, options: DeliverOptions, mail: OutboxRow) {
   const { db, now } = services;
+  if (await dropOutdated(services, mail)) return;
   try {
     await options.send(mail, AbortSignal.timeout(Math.round(options.leaseMs * 0.75)));
   } catch (error) {

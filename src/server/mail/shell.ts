@@ -8,6 +8,8 @@ export interface MailContent {
   button?: { label: string; url: string };
   /** Further addresses, one a line, under the button. */
   links?: { label: string; url: string }[];
+  /** Paragraphs under all that, such as cautions. */
+  closing?: string[];
   /** Small print, such as why this mail came. */
   footer: string;
   /** Where mails of this kind are switched off. */
@@ -22,7 +24,8 @@ export function renderMail(content: MailContent): { html: string; text: string }
 }
 
 function text(content: MailContent): string {
-  const { title, paragraphs, facts = [], quote, button, links = [], footer, unsubscribe } = content;
+  const { title, paragraphs, facts = [], quote, button, links = [] } = content;
+  const { closing = [], footer, unsubscribe } = content;
   const width = Math.max(0, ...facts.map(([label]) => label.length));
   const rows = facts.map(([label, value]) => `${`${label}:`.padEnd(width + 2)}${value}`);
   const blocks = [
@@ -32,22 +35,23 @@ function text(content: MailContent): string {
     ...(quote ? [`${quote.by}:\n${quote.words.replace(/^/gm, '> ')}`] : []),
     ...(button ? [`${button.label}:\n${button.url}`] : []),
     ...links.map(({ label, url }) => `${label}:\n${url}`),
+    ...closing,
     `-- \n${footer}${unsubscribe ? `\n${unsubscribe.label}: ${unsubscribe.url}` : ''}`,
   ];
   return `${blocks.join('\n\n')}\n`;
 }
 
 function html(content: MailContent): string {
-  const { title, paragraphs, facts = [], quote, button, links = [], footer, unsubscribe } = content;
+  const { title, paragraphs, facts = [], quote, button, links = [] } = content;
+  const { closing = [], footer, unsubscribe } = content;
   const row = ([label, value]: [string, string]): string =>
     `<tr><td class="quiet" style="${FONT};font-size:15px;line-height:22px;color:#44535a;padding:2px 16px 2px 0;vertical-align:top">${escape(label)}</td>` +
     `<td class="ink" style="${FONT};font-size:15px;line-height:22px;color:#15222a;padding:2px 0;vertical-align:top">${escape(value)}</td></tr>`;
+  const paragraphHtml = (paragraph: string): string =>
+    `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#15222a;margin:0 0 14px">${escape(paragraph)}</p>`;
   const parts = [
     `<h1 class="ink" style="${FONT};font-size:21px;line-height:28px;font-weight:600;color:#15222a;margin:0 0 14px">${escape(title)}</h1>`,
-    ...paragraphs.map(
-      (paragraph) =>
-        `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#15222a;margin:0 0 14px">${escape(paragraph)}</p>`,
-    ),
+    ...paragraphs.map(paragraphHtml),
     facts.length > 0
       ? `<table role="presentation" cellpadding="0" cellspacing="0" border="0" style="margin:0 0 18px">${facts.map(row).join('')}</table>`
       : '',
@@ -63,6 +67,7 @@ function html(content: MailContent): string {
       ({ label, url }) =>
         `<p style="margin:0 0 10px"><a class="link" href="${escape(url)}" style="${FONT};font-size:16px;line-height:24px;color:#14566b">${escape(label)}</a></p>`,
     ),
+    ...closing.map(paragraphHtml),
     `<p class="quiet rule" style="${FONT};font-size:13px;line-height:19px;color:#44535a;border-top:1px solid #cdd4d0;padding-top:12px;margin:6px 0 0">${escape(footer)}${unsubscribe ? ` <a class="quiet" href="${escape(unsubscribe.url)}" style="color:#44535a">${escape(unsubscribe.label)}</a>` : ''}</p>`,
   ];
   return `<!doctype html>

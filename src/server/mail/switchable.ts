@@ -15,7 +15,7 @@ export function switchableMail(
   return {
     to: to.email,
     subject,
-    ...renderMail({ ...content, unsubscribe: { label: `No more ${TOPIC_WORDS[topic]}`, url } }),
+    ...renderMail({ ...content, unsubscribe: { label: `Stop ${TOPIC_WORDS[topic]}`, url } }),
     topic,
     personId: to.personId,
     unsubscribeUrl: url,

@@ -1,17 +1,12 @@
 import type { Db } from '../db/connection';
 import { listed } from '../db/listed';
 import type { Tx } from '../db/transaction';
+import type { SkedRecipient } from '../mail/templates/skedFacts';
 
 /** Somebody in the crew of a party that is still in the sked, who can be written to. */
-export interface CrewMember {
-  personId: string;
-  email: string;
-  name: string;
-  timeZone: string;
-  /** Whether the person has an account; without one the mails carry a link that needs none. */
+export interface CrewMember extends SkedRecipient {
+  /** The opposite of `guest`: without an account the mails carry a link that needs none. */
   account: boolean;
-  /** The person's stations among the parties. */
-  stationIds: string[];
   /** Since when the person has belonged to the first of them. */
   sinceMs: number;
 }
@@ -73,6 +68,7 @@ export async function crewsOfSkeds(
       name: row.name,
       timeZone: row.time_zone,
       account: row.confirmed_at !== null,
+      guest: row.confirmed_at === null,
       stationIds: [row.station_id],
       sinceMs: row.added_at,
     });

@@ -88,6 +88,8 @@ async function reportsOf(db: Db, skedId: string): Promise<SkedReportView[]> {
       'sked_report.station_id',
       'station.call_sign',
       'sked_report.result',
+      'sked_report.report_sent',
+      'sked_report.report_received',
       'sked_report.words',
       'sked_report.at',
     ])
@@ -98,6 +100,8 @@ async function reportsOf(db: Db, skedId: string): Promise<SkedReportView[]> {
     stationId: row.station_id,
     callSign: row.call_sign,
     result: row.result,
+    reportSent: row.report_sent,
+    reportReceived: row.report_received,
     words: row.words,
     atMs: row.at,
   }));

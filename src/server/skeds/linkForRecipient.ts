@@ -4,7 +4,8 @@ import type { Tx } from '../db/transaction';
 import { newId, newSecret } from '../ids';
 import type { Services } from '../services';
 
-const GUEST_LINK_DAYS = 14;
+/** How long after its slot a sked can still be answered by link. */
+export const GUEST_LINK_MS = 14 * DAY_MS;
 
 interface LinkedSked {
   id: string;
@@ -33,7 +34,7 @@ export async function linkForRecipient(
       person_id: recipient.personId,
       sked_id: sked.id,
       created_at: services.now(),
-      expires_at: sked.end_at + GUEST_LINK_DAYS * DAY_MS,
+      expires_at: sked.end_at + GUEST_LINK_MS,
       used_at: null,
     })
     .execute();

@@ -4,7 +4,7 @@ import type { SkedRow } from '../db/tables';
 import { Conflict } from '../errors';
 import type { Services } from '../services';
 import { changeSked, type ChangeOutcome } from './change';
-import type { skedMoveSchema } from './schemas';
+import type { skedMoveSchema, WithLink } from './schemas';
 import { requireMoon, slotWarnings } from './slotCheck';
 
 /**
@@ -15,7 +15,7 @@ export function moveSked(
   services: Services,
   viewer: Viewer,
   skedId: string,
-  input: z.output<typeof skedMoveSchema>,
+  input: z.output<typeof skedMoveSchema> & WithLink,
 ): Promise<ChangeOutcome> {
   const slot = { startMs: input.start, endMs: input.end };
   return changeSked(services, viewer, {

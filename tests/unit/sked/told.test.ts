@@ -44,6 +44,7 @@ function sked(over: Partial<SkedView>): SkedView {
     droppedOut: false,
     waitsForViewer: true,
     reportDue: false,
+    disagreements: [],
     events: [],
     reports: [],
     choices: {

@@ -1,3 +1,4 @@
+import { actorName } from '../../../domain/sked/told';
 import { listOf } from '../../../domain/sked/view';
 import {
   formatDuration,
@@ -59,6 +60,9 @@ export function skedMail(
       facts: [
         ...skedRows(facts, recipient.timeZone),
         ...(words && by ? [[`${by.personName} writes`, words] as [string, string]] : []),
+        ...(news.kind === 'agreed' && !recipient.guest
+          ? [['For the hour itself', facts.sheetUrl] as [string, string]]
+          : []),
       ],
       button: { label: button, url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(yourCallSigns)}.`,
@@ -98,7 +102,7 @@ function told(news: SkedNews, yours: readonly string[]): Told {
   const partners = listOf(others.length > 0 ? others : callSigns);
   const you = by?.you === true;
   const actor = you ? 'You' : (by?.callSign ?? '');
-  const who = you ? 'You' : `${by?.personName}, ${by?.callSign},`;
+  const who = you || !by ? 'You' : withComma(actorName(by));
   const lapses = `Without an answer the offer lapses ${formatUtc(facts.startMs)}.`;
   const awaited = `${listOf(waiting)} ${waiting.length === 1 ? 'has' : 'have'} not answered yet. ${lapses}`;
   const open = news.asked ? 'Answer the offer' : 'Open the sked';
@@ -209,4 +213,9 @@ function shift(before: Interval, after: Interval): string {
   if (byMs !== 0) return `${formatDuration(Math.abs(byMs))} ${byMs > 0 ? 'later' : 'earlier'}`;
   const longerMs = after.endMs - before.endMs;
   return `${formatDuration(Math.abs(longerMs))} ${longerMs > 0 ? 'longer' : 'shorter'}`;
+}
+
+/** "Edda, QB7TID," and "QB7TID" */
+function withComma(name: string): string {
+  return name.includes(',') ? `${name},` : name;
 }

@@ -1,8 +1,9 @@
+import { actorName } from '../../../domain/sked/told';
 import { listOf } from '../../../domain/sked/view';
 import { formatUtcRange } from '../../../domain/time/format';
 import type { MailContent } from '../shell';
 import type { SkedMailFacts } from './skedFacts';
-import { skedTimes } from './skedTimes';
+import { skedRows } from './skedMail';
 
 /** A message of a sked partner. The words stand apart, so that they cannot pass for ours. */
 export function talkMail(
@@ -15,11 +16,8 @@ export function talkMail(
     content: {
       title: `${by.callSign} writes about the sked`,
       paragraphs: [],
-      facts: [
-        ...skedTimes(facts, reader.timeZone),
-        ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
-      ],
-      quote: { by: `${by.personName}, ${by.callSign}, writes`, words: by.words },
+      facts: skedRows(facts, reader.timeZone),
+      quote: { by: `${actorName(by)} writes`, words: by.words },
       button: { label: 'Open the sked', url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(reader.callSigns)}.`,
     },

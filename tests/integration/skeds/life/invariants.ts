@@ -2,19 +2,28 @@ import { expect } from 'vitest';
 import { overlaps } from '../../../../src/domain/time/interval';
 import { SKED_STATES } from '../../../../src/domain/sked/types';
 import { loadSked } from '../../../../src/server/skeds/load';
+import { keepReminders } from '../../../../src/server/reminders/keepReminders';
 import { takeIn, type Calendars } from '../calendarProgram';
+import { wrongWithReminders } from '../remindersDue';
 import type { Model, ModelSked } from './model';
 import { readMails, type Real } from './real';
 
 export type Invariant = (model: Readonly<Model>, real: Real) => Promise<void>;
 
-/** Looked at after every step. Reminders belong here too: of the agreed skeds ahead, and no others. */
+/** Looked at after every step. */
 export const INVARIANTS: Invariant[] = [
   skedsAreAsTheModelSays,
   oneAgreedSkedAtATime,
   oneUidAndRisingSequence,
   calendarsTellTheTruth,
+  remindersFollow,
 ];
+
+/** Reminders are of the agreed skeds ahead, for their crews, as they wish, and no others. */
+async function remindersFollow(_model: Readonly<Model>, real: Real): Promise<void> {
+  await keepReminders(real.world.services);
+  expect(await wrongWithReminders(real.world.services)).toEqual([]);
+}
 
 async function skedsAreAsTheModelSays(model: Readonly<Model>, real: Real): Promise<void> {
   for (const [index, expected] of model.skeds.entries()) {

@@ -1,3 +1,4 @@
+import type { RevisionSlot } from './revision';
 import type { PlanInput } from './plan/input';
 import type { Favour } from './weights';
 import type { PlanProblem, PlanProgress, PlanSlot, PlanWeights } from './plan/types';
@@ -7,6 +8,8 @@ export interface SavedRun {
   input: PlanInput;
   pinned: PlanSlot[];
   keep: PlanSlot[];
+  /** Slots that have begun, of pairs whose wish is no longer there: they stay in the plan as they are. */
+  begun: RevisionSlot[];
   weights: PlanWeights;
   /** What is favoured where not every wish has room. */
   favour: Favour;

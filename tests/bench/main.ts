@@ -2,6 +2,7 @@ import { allPairs500x72h } from './allPairs';
 import { drag60days } from './drag';
 import { growth } from './growth';
 import { linkPair30d } from './link';
+import { plan100x1000, plan24x276, plan40x200, replan40x200 } from './plan';
 import { mergeResults, printResults, type Bench } from './results';
 import { windowsPair30d } from './windowsPair30d';
 
@@ -11,6 +12,10 @@ const BENCHES: readonly Bench[] = [
   growth,
   linkPair30d,
   drag60days,
+  plan40x200,
+  plan24x276,
+  plan100x1000,
+  replan40x200,
 ];
 
 const filter = process.argv[2] ?? '';

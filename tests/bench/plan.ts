@@ -40,7 +40,7 @@ function proof(name: string, { result, seconds, buildSeconds, options }: Timed):
     name: `${name}.secondsToProof`,
     value: seconds,
     unit: 's',
-    note: `${result.plan.slots.length} contacts, proven best to the last unit; ${options} possible starts, computed from the stations' data in ${buildSeconds.toFixed(1)} s of it`,
+    note: `${result.plan.slots.length} contacts, proven best; ${options} possible starts, computed from the stations' data in ${buildSeconds.toFixed(1)} s of it`,
   };
 }
 

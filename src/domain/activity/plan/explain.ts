@@ -1,6 +1,6 @@
-import { formatNumber } from '../../time/format';
 import type { LeftOut, LeftOutReason } from './findings';
 import type { PlanInput, PlanInputStation, PlanInputWish } from './input';
+import { contacts } from './words';
 import { noOptionWords } from './noOption';
 import { buildOptions } from './options';
 import { remediesFor } from './remedies';
@@ -88,7 +88,7 @@ function takenWords(
     taken > 0 ? `${taken} taken by earlier wishes` : null,
     change > 0 ? `at ${change} there is no time to change band` : null,
     rest > 0
-      ? `at ${rest} somebody would have more than ${rules.mostInARow} contacts in a row`
+      ? `at ${rest} somebody would have more than ${contacts(rules.mostInARow)} in a row`
       : null,
   ].filter((part) => part !== null);
   return { reason: rest > 0 ? 'rest' : 'bandChange', sentence: `${starts}: ${parts.join(', ')}.` };
@@ -101,8 +101,4 @@ function worst(obstacles: readonly StandingObstacle[]): LeftOutReason {
   if (kinds.has('bandChange')) return 'bandChange';
   if (kinds.has('rest')) return 'rest';
   return 'free';
-}
-
-export function contacts(count: number): string {
-  return count === 1 ? '1 contact' : `${formatNumber(count)} contacts`;
 }

@@ -28,6 +28,7 @@ export default defineConfig({
         // FullCalendar brings its few icons as a font in a data: address.
         "font-src 'self' data:",
         "connect-src 'self'",
+        "worker-src 'self'",
         "object-src 'none'",
         "base-uri 'self'",
         "form-action 'self'",

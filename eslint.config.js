@@ -85,6 +85,15 @@ export default tseslint.config(
       ),
     },
   },
+  {
+    // Service workers, served as they are.
+    files: ['public/**/*.js'],
+    languageOptions: {
+      globals: Object.fromEntries(
+        ['self', 'caches', 'Response', 'Headers'].map((name) => [name, 'readonly']),
+      ),
+    },
+  },
   ...astro.configs.recommended,
   ...astro.configs['jsx-a11y-recommended'],
   {

@@ -5,9 +5,11 @@ import { readSession } from './server/auth/session';
 import { Forbidden, NotFound, SignInNeeded, WrongHost } from './server/errors';
 import { failureOf } from './server/http/failure';
 import { addSecurityHeaders } from './server/http/headers';
+import { forgetKept } from './server/http/keptSheets';
 import { isOwnHost, mayChange } from './server/http/origin';
 import { errorToJson } from './server/http/respond';
 import { signInPath } from './server/http/returnPath';
+import { isSecretPage, SECRET_PAGE_HEADERS } from './server/http/secretPages';
 import { newId } from './server/ids';
 import { log } from './server/log';
 import { services } from './server/services';
@@ -17,22 +19,28 @@ export const onRequest = defineMiddleware(async (context, next) => {
   context.locals.requestId = context.request.headers.get('x-request-id') ?? newId();
   context.locals.viewer = null;
   let response: Response;
+  let reached = false;
   try {
     refuseForeign(context);
     context.locals.viewer = await readSession(context);
+    reached = true;
     response = await next();
     if (response.status === 404 && isApi(context) && !isJson(response)) {
       throw new NotFound('The API has nothing at this address.');
     }
   } catch (error) {
-    response = await answerFailure(context, next, error);
+    response = await answerFailure(context, next, error, reached);
   }
   const { requestId, viewer } = context.locals;
   return withHeaders(response, (headers) => {
     headers.set('x-request-id', requestId);
     addSecurityHeaders(headers, services().config);
+    if (isPage(headers)) forgetKept(context.request, headers, viewer);
     if (viewer) headers.set('cache-control', 'no-store');
     else if (isPage(headers)) headers.set('cache-control', 'private, no-cache');
+    if (isSecretPage(context.url.pathname)) {
+      for (const [name, value] of Object.entries(SECRET_PAGE_HEADERS)) headers.set(name, value);
+    }
   });
 });
 
@@ -43,7 +51,12 @@ function refuseForeign({ request, url }: APIContext): void {
   }
   if (
     !mayChange(
-      { method: request.method, pathname: url.pathname, headers: request.headers },
+      {
+        method: request.method,
+        pathname: url.pathname,
+        search: url.search,
+        headers: request.headers,
+      },
       publicUrl,
     )
   ) {
@@ -57,6 +70,8 @@ async function answerFailure(
   context: APIContext,
   next: MiddlewareNext,
   error: unknown,
+  /** Whether the request came through to its page and action. */
+  reached: boolean,
 ): Promise<Response> {
   const { requestId } = context.locals;
   if (isApi(context)) return errorToJson(error, requestId);
@@ -67,7 +82,9 @@ async function answerFailure(
   }
   const failure = failureOf(error, requestId);
   if (failure.status === 500) log.error({ requestId, err: error }, 'request failed');
-  if (error instanceof WrongHost) return plain(failure.sentence, failure.status);
+  // Rendering a page runs the action that the request names, even when the page is that of the refusal.
+  const acts = !reached && context.request.method !== 'GET' && context.request.method !== 'HEAD';
+  if (error instanceof WrongHost || acts) return plain(failure.sentence, failure.status);
   context.locals.failure = failure;
   try {
     const cookie = context.request.headers.get('cookie') ?? '';

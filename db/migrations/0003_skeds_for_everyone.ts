@@ -59,9 +59,11 @@ const statements = [
     start_at INTEGER NOT NULL,
     end_at INTEGER NOT NULL,
     words TEXT NOT NULL DEFAULT '',
-    at INTEGER NOT NULL
+    at INTEGER NOT NULL,
+    -- SEQUENCE of the newest calendar message after it.
+    sequence INTEGER NOT NULL DEFAULT 0
   ) STRICT`,
-  `INSERT INTO sked_event_new SELECT * FROM sked_event`,
+  `INSERT INTO sked_event_new SELECT *, 0 FROM sked_event`,
   `DROP TABLE sked_event`,
   `ALTER TABLE sked_event_new RENAME TO sked_event`,
   `CREATE INDEX sked_event_by_sked ON sked_event (sked_id, at)`,
@@ -87,6 +89,15 @@ const statements = [
     used_at INTEGER
   ) STRICT`,
   `CREATE INDEX guest_link_by_person ON guest_link (person_id)`,
+  // When somebody first offered a sked to somebody without an account: how many is limited.
+  `CREATE TABLE guest_offer (
+    by_person_id TEXT NOT NULL REFERENCES person (id) ON DELETE CASCADE,
+    to_person_id TEXT NOT NULL REFERENCES person (id) ON DELETE CASCADE,
+    first_at INTEGER NOT NULL,
+    PRIMARY KEY (by_person_id, to_person_id)
+  ) STRICT`,
+  // Name and zone typed on registering, applied when the address is confirmed: until then anybody may have typed them.
+  `ALTER TABLE person_token ADD COLUMN registration_json TEXT CHECK (json_valid(registration_json))`,
   // Addresses that want no mail from people they do not know.
   `CREATE TABLE mail_block (
     email TEXT PRIMARY KEY CHECK (email = lower(email)),
@@ -168,6 +179,7 @@ const statements = [
   `DROP TABLE outbox`,
   `ALTER TABLE outbox_new RENAME TO outbox`,
   `CREATE INDEX outbox_due ON outbox (next_attempt_at) WHERE sent_at IS NULL AND set_aside_at IS NULL`,
+  `CREATE INDEX outbox_by_reply_to ON outbox (reply_to) WHERE reply_to IS NOT NULL`,
 ];
 
 export const migration0003: Migration = {

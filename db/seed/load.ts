@@ -2,6 +2,7 @@ import { log } from '../../src/server/log';
 import type { Tables } from '../../src/server/db/tables';
 import { inTransaction, type Tx } from '../../src/server/db/transaction';
 import type { Services } from '../../src/server/services';
+import { loadActivity } from './activity';
 import { planSkeds } from './plan';
 import { playSkeds } from './play';
 import { loadRoster } from './roster';
@@ -17,7 +18,15 @@ const FILLED: (keyof Tables)[] = [
   'sked_report',
   'sked_event',
   'sked_party',
+  'activity_slot',
+  'activity_revision',
+  'plan_run',
+  'activity_wish',
+  'activity_station',
+  'activity_band',
+  'guest_link',
   'sked',
+  'activity',
   'crew_invitation',
   'station_crew',
   'noise_record',
@@ -41,6 +50,7 @@ export async function loadDemo(services: Services): Promise<void> {
   }
   const roster = await loadRoster(services);
   await playSkeds(services, planSkeds(SKED_STORIES, services.now()), roster);
+  await loadActivity(services, roster);
   await finish(services);
 }
 

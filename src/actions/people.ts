@@ -1,5 +1,6 @@
 import type { ActionAPIContext } from 'astro:actions';
 import { z } from 'zod';
+import { mailPreferenceFormSchema } from '../domain/people/mailPreferenceForm';
 import { openToAll, requirePerson, requireRole } from '../server/auth/guards';
 import { isKnownBrowser, rememberBrowser } from '../server/auth/knownBrowser';
 import { SignInRefused, signInByLink, signInByPassword, signOut } from '../server/auth/session';
@@ -15,12 +16,14 @@ import { registerPerson, registrationSchema } from '../server/people/registerPer
 import { requestPasswordReset } from '../server/people/requestPasswordReset';
 import { requestSignInLink } from '../server/people/requestSignInLink';
 import { resetPassword } from '../server/people/resetPassword';
+import { saveMailPreference } from '../server/people/saveMailPreference';
 import { roleField, setRole } from '../server/people/setRole';
 import { signOutEverywhere } from '../server/people/signOutEverywhere';
 import { peekToken } from '../server/people/tokens';
 import { unlockPerson } from '../server/people/unlockPerson';
 import { profileSchema, updateProfile } from '../server/people/updateProfile';
 import { services } from '../server/services';
+import { listMyStations } from '../server/stations/listMyStations';
 import { paths } from '../paths';
 import { formAction } from './form';
 
@@ -86,8 +89,11 @@ export const people = {
     async (input, context) => {
       openToAll(context);
       await limitLinks(context);
+      const { personId = '' } = await peekToken(services(), input.secret, 'confirmMail');
       await enterByLink(context, { ...input, purpose: 'confirmMail' });
-      return { goTo: paths.newStation };
+      // Whoever has answered without an account finds the skeds so far.
+      const stations = await listMyStations(services(), { id: personId });
+      return { goTo: stations.length > 0 ? `${paths.skeds}?done=registered` : paths.newStation };
     },
   ),
 
@@ -142,6 +148,12 @@ export const people = {
     const viewer = requirePerson(context);
     await updateProfile(services(), viewer, input);
     return { goTo: `${paths.account}?saved=profile` };
+  }),
+
+  saveMailPreference: formAction(mailPreferenceFormSchema, async (preference, context) => {
+    const viewer = requirePerson(context);
+    await saveMailPreference(services(), viewer, preference);
+    return { goTo: `${paths.accountMail}?saved` };
   }),
 
   changePassword: formAction(

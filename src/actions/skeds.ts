@@ -4,9 +4,12 @@ import { services } from '../server/services';
 import { acceptSked } from '../server/skeds/acceptSked';
 import { cancelSked } from '../server/skeds/cancelSked';
 import { declineSked } from '../server/skeds/declineSked';
+import { dropOutSked } from '../server/skeds/dropOutSked';
 import { moveSked } from '../server/skeds/moveSked';
+import { messageSchema, postMessage } from '../server/skeds/postMessage';
 import { reportSked } from '../server/skeds/reportSked';
 import { skedAnswerSchema, skedMoveFormSchema, skedReportSchema } from '../server/skeds/schemas';
+import { setSheet, sheetSettingsFormSchema } from '../server/skeds/setSheet';
 import { withdrawSked } from '../server/skeds/withdrawSked';
 import { paths } from '../paths';
 import { formAction } from './form';
@@ -32,6 +35,12 @@ export const skeds = {
     return done(id, 'declined');
   }),
 
+  dropOut: formAction(answerForm, async ({ id, ...answer }, context) => {
+    const viewer = requirePerson(context);
+    await dropOutSked(services(), viewer, id, answer);
+    return done(id, 'dropped-out');
+  }),
+
   withdraw: formAction(answerForm, async ({ id, ...answer }, context) => {
     const viewer = requirePerson(context);
     await withdrawSked(services(), viewer, id, answer);
@@ -54,5 +63,17 @@ export const skeds = {
     const viewer = requirePerson(context);
     await reportSked(services(), viewer, id, said);
     return done(id, 'reported');
+  }),
+
+  setSheet: formAction(sheetSettingsFormSchema, async ({ id, first, convention }, context) => {
+    const viewer = requirePerson(context);
+    await setSheet(services(), viewer, id, { eastFirst: first === 'east', convention });
+    return { goTo: `${paths.skedSheet(id)}?done=set` };
+  }),
+
+  say: formAction(skedId.extend(messageSchema.shape), async ({ id, ...message }, context) => {
+    const viewer = requirePerson(context);
+    await postMessage(services(), viewer, id, message);
+    return { goTo: `${paths.sked(id)}?done=said#talk` };
   }),
 };

@@ -1,6 +1,7 @@
 import { mkdirSync } from 'node:fs';
 import path from 'node:path';
 import { z } from 'zod';
+import type { Backoff } from './mail/backoff';
 
 const port = z.coerce.number().int().min(1).max(65535);
 
@@ -15,7 +16,12 @@ const environmentSchema = z.object({
   SMTP_PASSWORD: z.string().optional(),
   SMTP_TLS: z.enum(['none', 'starttls', 'tls']).default('starttls'),
   MAIL_FROM: z.string().min(3),
+  INBOUND_ADDRESS: z.email().optional(),
+  INBOUND_SECRET: z.string().min(16).optional(),
+  INBOUND_FOLDER: z.string().optional(),
   MAIL_LEASE_SECONDS: z.coerce.number().min(1).max(3600).default(60),
+  MAIL_RETRY_FIRST_SECONDS: z.coerce.number().min(0.1).max(3600).default(15),
+  MAIL_RETRY_LONGEST_SECONDS: z.coerce.number().min(0.1).max(86_400).default(3600),
   TRUST_PROXY: z.enum(['yes', 'no']).default('no'),
   CALCULATOR_REQUESTS_PER_MINUTE: z.coerce.number().int().min(1).default(120),
   SIGN_IN_ATTEMPTS_PER_MINUTE: z.coerce.number().int().min(1).default(10),
@@ -38,8 +44,19 @@ export interface Config {
     tls: 'none' | 'starttls' | 'tls';
     from: string;
   };
+  /** Mail that comes in. */
+  inbound: {
+    /** Answers go to this address, with "+token" before the @ for each person and sked. Null: none are received. */
+    address: string | null;
+    /** What a mail server shows when it hands a mail in over HTTP. Null: that way is closed. */
+    secret: string | null;
+    /** Maildir that the worker empties. Null: that way is closed. */
+    folder: string | null;
+  };
   /** How long a mail taken by the worker is its own; after that another attempt is made. */
   mailLeaseMs: number;
+  /** How long a mail that was not taken waits for its next attempt. */
+  mailRetry: Backoff;
   /** Whether X-Forwarded-For comes from a proxy that sets it. */
   trustProxy: boolean;
   calculatorRequestsPerMinute: number;
@@ -65,9 +82,10 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
   if (!parsed.success) {
     const wrong = parsed.error.issues.map((issue) => {
       const name = String(issue.path[0]);
-      return name in given
-        ? `${name} is "${given[name]}", which is not usable`
-        : `${name} is missing`;
+      if (!(name in given)) return `${name} is missing`;
+      return /SECRET|PASSWORD/.test(name)
+        ? `${name} is not usable`
+        : `${name} is "${given[name]}", which is not usable`;
     });
     throw new ConfigurationMissing(
       `Echotide cannot start: ${wrong.join('; ')}. .env.example explains each setting.`,
@@ -87,7 +105,16 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
       tls: env.SMTP_TLS,
       from: env.MAIL_FROM,
     },
-    mailLeaseMs: env.MAIL_LEASE_SECONDS * 1000,
+    inbound: {
+      address: env.INBOUND_ADDRESS ?? null,
+      secret: env.INBOUND_SECRET ?? null,
+      folder: env.INBOUND_FOLDER === undefined ? null : path.resolve(env.INBOUND_FOLDER),
+    },
+    mailLeaseMs: Math.round(env.MAIL_LEASE_SECONDS * 1000),
+    mailRetry: {
+      firstMs: Math.round(env.MAIL_RETRY_FIRST_SECONDS * 1000),
+      longestMs: Math.round(env.MAIL_RETRY_LONGEST_SECONDS * 1000),
+    },
     trustProxy: env.TRUST_PROXY === 'yes',
     calculatorRequestsPerMinute: env.CALCULATOR_REQUESTS_PER_MINUTE,
     signInAttemptsPerMinute: env.SIGN_IN_ATTEMPTS_PER_MINUTE,

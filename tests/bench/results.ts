@@ -12,7 +12,7 @@ export interface BenchResult {
   note?: string;
 }
 
-/** One part of the benchmarks, chosen by the start of its name: `npm run bench -- windows`. */
+/** One part of the benchmarks, chosen by the start of a part of its name: `npm run bench -- race`. */
 export interface Bench {
   name: string;
   run: () => BenchResult[] | Promise<BenchResult[]>;

@@ -1,3 +1,4 @@
+import type { Page } from '@playwright/test';
 import { addStation, offerSked } from './support/byApi';
 import { calendarIn, linkIn, mailsTo, waitForMail } from './support/mails';
 import { PASSWORD, register, signIn } from './support/people';
@@ -64,6 +65,66 @@ test('answers an offer from its mail without JavaScript', async ({ empty, browse
   }
   await first!.context().close();
   await second!.context().close();
+});
+
+test('drops out of a sked of three, and subscribes to the others, without JavaScript', async ({
+  empty,
+  browser,
+}) => {
+  const people = ['tua', 'ulf', 'vera'].map((name, index) => ({
+    name,
+    email: `${name}@qn${index + 6}noj.example`,
+    timeZone: 'UTC',
+  }));
+  const pages = await Promise.all(
+    people.map(async (who) => {
+      const context = await browser.newContext({ javaScriptEnabled: false });
+      const page = await context.newPage();
+      await register(page, empty, who);
+      return page;
+    }),
+  );
+  const stations = [];
+  for (const [index, page] of pages.entries()) {
+    const callSign = `QN${index + 6}NOJ`;
+    stations.push(await addStation(page, empty, { callSign, locator: `JO5${index}` }));
+  }
+  const id = await offerSked(pages[0]!, empty, stations[0]!, stations[1]!, [stations[2]!]);
+  for (const page of pages.slice(1)) {
+    await page.goto(`${empty.url}/skeds/${id}`);
+    await page.getByRole('button', { name: /^Accept / }).click();
+  }
+  const leaver = pages[2]!;
+  await expect(leaver.getByText(/^Agreed\./)).toBeVisible();
+  await leaver.getByRole('link', { name: 'Drop out' }).click();
+  await leaver.getByLabel(/^Words for/).fill('The mast is down.');
+  await leaver.getByRole('button', { name: 'Drop out' }).click();
+  await expect(leaver.getByText(/^You dropped out\. The others get a mail/)).toBeVisible();
+  await expect(leaver.getByText('QN6NOJ and QN7NOJ keep the slot.')).toBeVisible();
+
+  const told = await waitForMail(empty, people[0]!.email, /QN8NOJ dropped out/);
+  expect(told.text).toContain('The mast is down.');
+  expect(calendarIn(told)).toMatchObject({ method: 'REQUEST', status: 'CONFIRMED' });
+  const own = await waitForMail(empty, people[2]!.email, /You dropped out/);
+  expect(calendarIn(own)).toMatchObject({ method: 'CANCEL', mimeMethod: 'CANCEL' });
+
+  const [reader] = pages as [Page];
+  await reader.goto(`${empty.url}/calendar`);
+  await reader.getByRole('button', { name: 'Make an address: All your skeds' }).click();
+  const address = await reader.getByLabel('Address of the calendar').inputValue();
+  const feed = await fetch(address);
+  expect(feed.headers.get('content-type')).toContain('text/calendar');
+  expect(feed.headers.get('cache-control')).toContain('private');
+  expect(feed.headers.get('referrer-policy')).toBe('no-referrer');
+  expect(await feed.text()).toContain(`UID:${calendarIn(told).uid}`);
+  const etag = feed.headers.get('etag')!;
+  expect((await fetch(address, { headers: { 'if-none-match': etag } })).status).toBe(304);
+  await reader.goto(`${empty.url}/calendar`);
+  await expect(reader.getByLabel('Address of the calendar')).toHaveCount(0);
+  await reader.getByRole('button', { name: 'End the address: All your skeds' }).click();
+  await expect(reader.getByText('The address is ended.', { exact: false })).toBeVisible();
+  expect((await fetch(address)).status).toBe(404);
+  await Promise.all(pages.map((page) => page.context().close()));
 });
 
 test('keeps what was typed and says what is wrong, without telling whom it knows', async ({

@@ -18,6 +18,9 @@ interface Checked {
   status?: number;
 }
 
+/** Address of the activity of the demo. */
+const DEMO = 'two-tides-weekend';
+
 const everybody: Who[] = [null, 'Ylva'];
 const forPeople: Who[] = ['Ylva', 'Marit'];
 
@@ -38,6 +41,13 @@ const PAGES: Checked[] = [
   { route: 'reset/[secret]', address: () => paths.resetPassword('none'), as: [null], status: 404 },
   { route: 'join/[secret]', address: () => paths.joinCrew('none'), as: ['Ylva'], status: 404 },
   { route: 'account', address: () => paths.account, as: ['Ylva', 'Osvin'] },
+  { route: 'account/mail', address: () => paths.accountMail, as: ['Ylva'] },
+  {
+    route: 'unsubscribe/[token]',
+    address: () => paths.unsubscribe('none'),
+    as: [null],
+    status: 404,
+  },
   {
     route: 'windows',
     address: () => paths.windowsWith(['QA1LUN', 'QB7TID'], '1296'),
@@ -59,8 +69,57 @@ const PAGES: Checked[] = [
     address: (ids) => paths.skedStep(ids.offered, 'decline'),
     as: ['Ylva'],
   },
+  { route: 'skeds/[id]/sheet', address: (ids) => paths.skedSheet(ids.agreed), as: ['Ylva'] },
+  { route: 'skeds/[id]/sheet', address: (ids) => paths.skedSheet(ids.reported), as: ['Ylva'] },
+  { route: 'skeds/[id]/live', address: (ids) => paths.skedLive(ids.agreed), as: ['Ylva'] },
+  { route: 'skeds/[id]/live', address: (ids) => paths.skedLive(ids.reported), as: ['Ylva'] },
   { route: 'skeds/[id]/move', address: (ids) => paths.skedMove(ids.offered), as: ['Ylva'] },
+  { route: 'skeds/new-guest', address: () => paths.newGuest, as: forPeople },
+  { route: 'answer/[secret]/index', address: () => paths.answer('none'), as: [null], status: 404 },
+  {
+    route: 'answer/[secret]/move',
+    address: () => paths.answerMove('none'),
+    as: [null],
+    status: 404,
+  },
+  { route: 'no-more/[token]', address: () => paths.noMore('none'), as: [null], status: 404 },
   { route: 'calendar', address: () => paths.calendar, as: forPeople },
+  { route: 'activities/index', address: () => paths.activities, as: [null, 'Ylva', 'Marit'] },
+  { route: 'activities/new', address: () => paths.newActivity, as: ['Marit'] },
+  { route: 'activities/new', address: () => paths.newActivity, as: ['Ylva'], status: 403 },
+  { route: 'activities/[slug]/index', address: () => paths.activity(DEMO), as: ['Ylva', 'Marit'] },
+  {
+    route: 'activities/[slug]/index',
+    address: () => paths.activity(DEMO),
+    as: [null],
+    status: 404,
+  },
+  { route: 'activities/[slug]/roster', address: () => paths.activityRoster(DEMO), as: ['Marit'] },
+  {
+    route: 'activities/[slug]/roster',
+    address: () => `${paths.activityRoster(DEMO)}?find=q`,
+    as: ['Osvin'],
+  },
+  { route: 'activities/[slug]/import', address: () => paths.activityImport(DEMO), as: ['Marit'] },
+  { route: 'activities/[slug]/wishes', address: () => paths.activityWishes(DEMO), as: ['Marit'] },
+  { route: 'activities/[slug]/plan', address: () => paths.activityPlan(DEMO), as: ['Marit'] },
+  {
+    route: 'activities/[slug]/settings',
+    address: () => paths.activitySettings(DEMO),
+    as: ['Marit'],
+  },
+  { route: 'activities/[slug]/answer', address: () => paths.activityAnswer(DEMO), as: ['Ylva'] },
+  {
+    route: 'activities/[slug]/answer',
+    address: (ids) => paths.activityAnswer(DEMO, ids.QB7TID),
+    as: ['Marit'],
+  },
+  {
+    route: 'roster/[secret]',
+    address: () => paths.rosterAnswer('none'),
+    as: [null],
+    status: 404,
+  },
   { route: 'stations/index', address: () => paths.stations, as: everybody },
   { route: 'stations/new', address: () => paths.newStation, as: ['Ylva'] },
   {

@@ -1,4 +1,4 @@
-import { zoneNamesByRegion } from '../../domain/time/zoneNames';
+import { zoneLabel, zoneNamesByRegion } from '../../domain/time/zoneNames';
 import { SelectField } from '../ui/Field';
 
 interface Props {
@@ -15,7 +15,7 @@ export function TimeZoneField({ id, value, ...rest }: Props) {
   const listed = groups.some(({ zones }) => zones.includes(value));
   return (
     <SelectField id={id} name={id} defaultValue={value} required {...rest}>
-      {listed ? null : <option value={value}>{value}</option>}
+      {listed ? null : <option value={value}>{zoneLabel(value)}</option>}
       {groups.map(({ region, zones }) => (
         <optgroup key={region} label={region}>
           {zones.map((zone) => (

@@ -24,6 +24,8 @@ interface Props {
   skedId: string;
   version: number;
   as: string;
+  /** Of the link from a mail, where it is answered without an account. */
+  secret?: string | undefined;
   parties: { callSign: string; timeZone: string }[];
   choices: (MoveChoice & { href: string })[];
   /** By what the choices are judged. */
@@ -59,6 +61,7 @@ export function MoveForm(props: Props) {
         <input type="hidden" name="id" value={props.skedId} />
         <input type="hidden" name="version" value={props.version} />
         <input type="hidden" name="as" value={props.as} />
+        {props.secret ? <input type="hidden" name="secret" value={props.secret} /> : null}
         <div className="grid grid-cols-2 gap-x-4 gap-y-4 sm:grid-cols-3">
           <TextField
             id="date"

@@ -1,8 +1,9 @@
 import { useState } from 'react';
+import { usualPolarization } from '../../domain/guest/guest';
 import { BANDS, bandById, type BandId } from '../../domain/station/bands';
 import { equipmentUpdateSchema } from '../../domain/station/schema';
 import { newestRecord, type NoiseRecord } from '../../domain/station/noiseRecord';
-import type { BandSetup, Polarization } from '../../domain/station/setup';
+import type { BandSetup } from '../../domain/station/setup';
 import type { BandEquipment } from '../../domain/station/views';
 import { paths } from '../../paths';
 import { Button } from '../ui/Button';
@@ -133,9 +134,4 @@ function newSetup(band: BandId, like: BandSetup | undefined): BandSetup {
     powerAtFeedW: NaN,
     receive: { kind: 'measured', systemTemperatureK: NaN },
   };
-}
-
-function usualPolarization(frequencyMhz: number): Polarization {
-  if (frequencyMhz < 1000) return 'horizontal';
-  return frequencyMhz < 6000 ? 'rightCircular' : 'vertical';
 }

@@ -1,10 +1,16 @@
 import { useState } from 'react';
 import { antennaFigures } from '../../domain/link/antenna';
-import type { ExposureLevel } from '../../domain/link/exposureEstimate';
 import {
   exposureEstimate,
   type ExposureEstimate as Estimate,
 } from '../../domain/link/exposureEstimate';
+import {
+  distanceWords,
+  GROUND_BELOW_MHZ,
+  GROUND_FACTOR,
+  LEVEL_WORDS,
+  metresWords as metres,
+} from '../../domain/link/exposureWords';
 import { bandById, type BandId } from '../../domain/station/bands';
 import { antennaSchema } from '../../domain/station/equipmentSchema';
 import type { Antenna } from '../../domain/station/setup';
@@ -20,17 +26,6 @@ interface Props {
 
 /** Turn about, of any stretch the limits are averaged over. */
 const USUAL_DUTY_PERCENT = 50;
-/** Power density with the ground's reflection, as OET-65 counts it: 1.6 times the field. */
-const GROUND_FACTOR = 2.56;
-/** Below this, antennas are low and wide enough to count the ground from the start. */
-const GROUND_BELOW_MHZ = 1000;
-
-const LEVEL_WORDS: Record<ExposureLevel['id'], string> = {
-  fccOccupational: 'People who know and control it, FCC',
-  fccGeneral: 'Everybody, FCC',
-  icnirpGeneral: 'Everybody, ICNIRP 2020',
-};
-
 /** How far the beam exceeds the usual exposure levels: an estimate, said so, with what it leaves out. */
 export function ExposureEstimate({ band, antenna, powerAtFeedW }: Props) {
   const { label, centreMhz } = bandById(band);
@@ -139,18 +134,6 @@ function Distances({ estimate: { levels, dish } }: { estimate: Estimate }) {
       )}
     </>
   );
-}
-
-function distanceWords({ distanceM, cautiousM }: ExposureLevel): string {
-  if (cautiousM !== null) return `${metres(cautiousM)}, by the higher peak`;
-  return distanceM === 0 ? 'nowhere' : metres(distanceM);
-}
-
-/** Rounded up: the safe way. */
-function metres(distanceM: number): string {
-  return distanceM < 10
-    ? `${formatNumber(Math.ceil(distanceM * 10) / 10, 1)} m`
-    : `${formatNumber(Math.ceil(distanceM))} m`;
 }
 
 function density(wm2: number): string {

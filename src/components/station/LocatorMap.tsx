@@ -1,9 +1,9 @@
 import { useEffect, useMemo, useState } from 'react';
 import { geoAzimuthalEquidistant, geoGraticule, geoPath } from 'd3-geo';
 import type { FeatureCollection, Polygon } from 'geojson';
-import type { GeometryCollection, Topology } from 'topojson-specification';
 import type { LocatorCell, Position } from '../../domain/locator/locator';
 import { formatPosition } from '../../domain/time/format';
+import { loadedLand, loadLand } from '../chart/land';
 
 interface Props {
   position: Position;
@@ -17,22 +17,9 @@ const HEIGHT = 300;
 /** From the middle to the edge, degrees of a great circle. */
 const REACH_DEG = 16;
 
-let land: FeatureCollection | null = null;
-
-async function loadLand(): Promise<FeatureCollection> {
-  if (land) return land;
-  const [{ feature }, { default: topology }] = await Promise.all([
-    import('topojson-client'),
-    import('world-atlas/land-110m.json'),
-  ]);
-  const world = topology as unknown as Topology<{ land: GeometryCollection }>;
-  land = feature(world, world.objects.land);
-  return land;
-}
-
 /** A map of the surroundings with the locator's cell marked; coastlines only, loaded when first shown. */
 export function LocatorMap({ position, cell, cellName }: Props) {
-  const [coast, setCoast] = useState<FeatureCollection | null>(land);
+  const [coast, setCoast] = useState<FeatureCollection | null>(loadedLand);
   useEffect(() => {
     let stays = true;
     loadLand().then(

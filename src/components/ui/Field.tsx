@@ -78,6 +78,27 @@ export function SelectField({
   );
 }
 
+/**
+ * A list of which one is chosen. For pages: options that stand between the tags of a `SelectField` in .astro are
+ * unknown to React, so its `defaultValue` would choose none of them.
+ */
+export function ChoiceField({
+  options,
+  ...rest
+}: FieldFrame & {
+  options: readonly { value: string; label: string }[];
+} & Omit<SelectHTMLAttributes<HTMLSelectElement>, 'children'>) {
+  return (
+    <SelectField {...rest}>
+      {options.map(({ value, label }) => (
+        <option key={value} value={value}>
+          {label}
+        </option>
+      ))}
+    </SelectField>
+  );
+}
+
 export function TextAreaField({
   id,
   label,

@@ -5,6 +5,7 @@ import arrowRight from 'lucide-static/icons/arrow-right.svg?raw';
 import arrowUp from 'lucide-static/icons/arrow-up.svg?raw';
 import calendarDays from 'lucide-static/icons/calendar-days.svg?raw';
 import calendarRange from 'lucide-static/icons/calendar-range.svg?raw';
+import chartGantt from 'lucide-static/icons/chart-gantt.svg?raw';
 import check from 'lucide-static/icons/check.svg?raw';
 import circleAlert from 'lucide-static/icons/circle-alert.svg?raw';
 import circleQuestionMark from 'lucide-static/icons/circle-question-mark.svg?raw';
@@ -28,6 +29,7 @@ const icons = {
   arrowUp,
   calendarDays,
   calendarRange,
+  chartGantt,
   check,
   circleAlert,
   circleQuestionMark,

@@ -5,6 +5,8 @@ interface Props {
   state: SkedState;
   /** Whether an offered sked waits for the viewer (else for others). */
   waitsForViewer?: boolean | undefined;
+  /** Whether the viewer has left it to the others. */
+  droppedOut?: boolean | undefined;
 }
 
 const WORDS: Record<Exclude<SkedState, 'offered'>, string> = {
@@ -17,7 +19,15 @@ const WORDS: Record<Exclude<SkedState, 'offered'>, string> = {
 };
 
 /** State of a sked: a sign and always the word. */
-export function StateLabel({ state, waitsForViewer = false }: Props) {
+export function StateLabel({ state, waitsForViewer = false, droppedOut = false }: Props) {
+  if (droppedOut) {
+    return (
+      <span className="state state--quiet">
+        <span className="state__sign state__sign--hatch" />
+        you dropped out
+      </span>
+    );
+  }
   if (state === 'offered') {
     return (
       <span className="state">

@@ -6,7 +6,9 @@ import {
   MODEL_ERROR_SENTENCE,
   type LinkSheets,
 } from '../../domain/window/ledgerSheet';
+import type { LinkMatrix as Matrix } from '../../domain/window/linkMatrix';
 import { LedgerTerms, LinkLedger } from '../link/LinkLedger';
+import { LinkMatrix } from '../link/LinkMatrix';
 import { Button } from '../ui/Button';
 import { Dialog } from '../ui/Dialog';
 import { FigureLabel } from '../ui/FigureLabel';
@@ -14,24 +16,32 @@ import { FigureLabel } from '../ui/FigureLabel';
 interface Props {
   /** Null while closed. */
   sheets: LinkSheets | null;
+  /** All pairs of a round, of which `sheets` are one. */
+  round: LinkRound | null;
   onClose: () => void;
 }
 
-/** The link at the hand in both directions, with every term, and the same as text. */
-export function LinkDialog({ sheets, onClose }: Props) {
+export interface LinkRound {
+  matrix: Matrix;
+  pair: { first: number; second: number };
+  onPair: (from: number, to: number) => void;
+}
+
+/** The link at the hand in both directions, with every term, and the same as text; of a round any pair's. */
+export function LinkDialog({ sheets, round, onClose }: Props) {
   return (
     <Dialog
       wide
       open={sheets !== null}
-      title={sheets ? `Link at ${formatUtc(sheets.timeMs)}` : ''}
+      title={sheets ? `${round ? 'Links' : 'Link'} at ${formatUtc(sheets.timeMs)}` : ''}
       onClose={onClose}
     >
-      {sheets ? <Content sheets={sheets} onClose={onClose} /> : null}
+      {sheets ? <Content sheets={sheets} round={round} onClose={onClose} /> : null}
     </Dialog>
   );
 }
 
-function Content({ sheets, onClose }: { sheets: LinkSheets; onClose: () => void }) {
+function Content({ sheets, round, onClose }: Props & { sheets: LinkSheets }) {
   const [copied, setCopied] = useState<'yes' | 'no' | null>(null);
   const text = ledgerText(sheets);
   const copy = async () => {
@@ -44,6 +54,15 @@ function Content({ sheets, onClose }: { sheets: LinkSheets; onClose: () => void 
   };
   return (
     <>
+      {round ? (
+        <>
+          <p>{round.matrix.sentence}</p>
+          <LinkMatrix {...round} />
+          <h3>
+            {sheets.directions[0].from} and {sheets.directions[0].to}
+          </h3>
+        </>
+      ) : null}
       <p>
         {sheets.weaker} {MODEL_ERROR_SENTENCE}{' '}
         <FigureLabel figure="chance">Chance of a contact</FigureLabel> in a slot of{' '}

@@ -1,10 +1,11 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
+import { guestHours } from '../../domain/guest/guest';
 import { bandById, type BandId } from '../../domain/station/bands';
 import { defaultMode, MODES, type ModeId } from '../../domain/station/modes';
 import { formatClock, formatLocalRange, formatUtcRange } from '../../domain/time/format';
 import { MINUTE_MS, type Interval } from '../../domain/time/interval';
-import type { ChosenStation } from '../../domain/window/searchData';
+import { setupOn, type ChosenStation } from '../../domain/window/searchData';
 import { listWords } from '../../domain/window/sentences';
 import { paths } from '../../paths';
 import { Button, ButtonLink } from '../ui/Button';
@@ -31,9 +32,9 @@ interface Props {
 function obstacle({ signedIn, stations, slot, nowMs }: Props): string | null {
   if (slot.startMs <= nowMs) return 'This time has passed.';
   if (!signedIn) return null;
-  const places = stations.filter((station) => station.id === null);
+  const places = stations.filter((station) => station.id === null && !station.guest);
   if (places.length > 0) {
-    return `${listWords(places.map((place) => place.callSign))} ${places.length === 1 ? 'is a bare place' : 'are bare places'}. A sked needs stations that are registered here.`;
+    return `${listWords(places.map((place) => place.callSign))} ${places.length === 1 ? 'is a bare place' : 'are bare places'}. A sked needs a call sign: choose a station, or “Somebody not registered”.`;
   }
   if (!stations.some((station) => station.own)) {
     return 'An offer comes from one of your own stations. Put one into the question.';
@@ -125,6 +126,8 @@ function OfferForm({
   const [frequency, setFrequency] = useState(centreMhz.toFixed(3));
   const [mode, setMode] = useState<ModeId>(asked ?? defaultMode(band));
   const [words, setWords] = useState('');
+  const guests = stations.filter((partner) => partner.guest !== undefined);
+  const [emails, setEmails] = useState<Record<string, string>>({});
   const frequencyMhz = Number(frequency.replace(',', '.'));
   const frequencyProblem =
     frequency.trim() !== '' && frequencyMhz >= fromMhz && frequencyMhz <= toMhz
@@ -138,7 +141,10 @@ function OfferForm({
         headers: { 'content-type': 'application/json' },
         body: JSON.stringify({
           station,
-          with: stations.flatMap(({ id }) => (id === null || id === station ? [] : [id])),
+          with: stations.flatMap((partner): unknown[] => {
+            if (partner.guest) return [guestToOffer(partner, emails[partner.token] ?? '', band)];
+            return partner.id === null || partner.id === station ? [] : [partner.id];
+          }),
           band,
           frequencyMhz,
           mode,
@@ -207,6 +213,19 @@ function OfferForm({
           ))}
         </SelectField>
       ) : null}
+      {guests.map((guest, index) => (
+        <TextField
+          key={guest.token}
+          id={`offer-email-${index}`}
+          type="email"
+          label={`Mail address of ${guest.callSign}`}
+          note={`${guest.callSign} answers behind a link in a mail, without an account. The address is used for nothing else.`}
+          autoComplete="off"
+          required
+          value={emails[guest.token] ?? ''}
+          onChange={(event) => setEmails({ ...emails, [guest.token]: event.target.value })}
+        />
+      ))}
       <div className="form__pair">
         <TextField
           id="offer-frequency"
@@ -250,4 +269,19 @@ function OfferForm({
       </div>
     </form>
   );
+}
+
+/** What the API is told of a partner without an account: as the windows were computed with it. */
+function guestToOffer(partner: ChosenStation, email: string, band: BandId) {
+  const { hours } = partner.guest!;
+  const setup = setupOn(partner, band);
+  return {
+    callSign: partner.callSign,
+    email,
+    locator: partner.locator,
+    timeZone: partner.timeZone,
+    sky: partner.sky,
+    hours: guestHours(hours),
+    ...(setup ? { setup } : {}),
+  };
 }

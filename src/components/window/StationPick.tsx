@@ -7,6 +7,7 @@ import { paths } from '../../paths';
 import { Button } from '../ui/Button';
 import { TextField } from '../ui/Field';
 import { ValuePick } from './ValuePick';
+import { GuestForm } from './GuestForm';
 import { callApi } from './useWindows';
 
 interface Props {
@@ -50,6 +51,7 @@ function StationPanel({ own, chosen, onChoose, onRemove, callSign }: PanelProps)
   const id = useId();
   const field = useRef<HTMLInputElement>(null);
   const [text, setText] = useState('');
+  const [guest, setGuest] = useState(false);
   const search = useDeferredValue(text.trim());
   useEffect(() => field.current?.focus(), []);
   const query = useQuery({
@@ -73,6 +75,15 @@ function StationPanel({ own, chosen, onChoose, onRemove, callSign }: PanelProps)
   const choices = [...own.filter(matches), ...listed].filter(
     (choice) => !chosen.includes(choice.callSign),
   );
+  if (guest) {
+    return (
+      <GuestForm
+        callSign={/\d/.test(search) && !isLocator(search) ? search.toUpperCase() : ''}
+        onChoose={onChoose}
+        onBack={() => setGuest(false)}
+      />
+    );
+  }
   return (
     <>
       <TextField
@@ -111,6 +122,11 @@ function StationPanel({ own, chosen, onChoose, onRemove, callSign }: PanelProps)
             : 'No listed station matches. A locator such as JO97ee works too.'}
         </p>
       ) : null}
+      <div>
+        <Button look="bare" icon="plus" onClick={() => setGuest(true)}>
+          Somebody not registered
+        </Button>
+      </div>
       {query.error ? <p className="field__error">{query.error.message}</p> : null}
       {onRemove ? (
         <Button look="bare" icon="trash" onClick={onRemove}>

@@ -1,11 +1,13 @@
 import { useMemo, useState, type ReactNode } from 'react';
 import { describe } from '../../domain/link/budget';
+import type { LinkMoment } from '../../domain/link/moment';
 import { bandById } from '../../domain/station/bands';
 import { formatClock, formatDay } from '../../domain/time/format';
 import { overlaps, type Interval } from '../../domain/time/interval';
 import { moonPhase } from '../../domain/window/moonPhase';
 import { judgedAt } from '../../domain/window/judge';
-import { linkSheets, type LinkSheets } from '../../domain/window/ledgerSheet';
+import { linkSheets } from '../../domain/window/ledgerSheet';
+import { linkMatrix, pairsOf } from '../../domain/window/linkMatrix';
 import { qualityFigure } from '../../domain/window/quality';
 import { setupOn } from '../../domain/window/searchData';
 import { windowSentence } from '../../domain/window/sentences';
@@ -51,19 +53,24 @@ export function WindowDetail(props: Props) {
   const inView = <T extends Interval>(items: readonly T[]) =>
     items.filter((item) => overlaps(item, view.shown));
   const { judge } = layers;
-  const [sheets, setSheets] = useState<LinkSheets | null>(null);
-  const moment = useMemo(
-    () => (judge.links.length === 1 ? judge.links[0]!.over(view.table) : null),
+  const moments = useMemo(
+    () => judge.links.map((link) => link.over(view.table)),
     [judge, view.table],
   );
-  moment?.compute(cursorMs);
-  const allUp = judge.links.every((link) => link.over(view.table).look(cursorMs));
+  const moment = moments.length === 1 ? moments[0]! : null;
+  for (const one of moments) one.compute(cursorMs);
+  const allUp = moments.every(({ moonUp }) => moonUp);
+  const [linkOf, setLinkOf] = useState<{ first: number; second: number } | null>(null);
+  const links = useMemo(
+    () => (linkOf ? linksAt(answer, moments, cursorMs, linkOf) : null),
+    [answer, moments, cursorMs, linkOf],
+  );
   const openLink = () => {
-    const [first, second] = stations.map((station) => setupOn(station, question.band));
-    if (!moment || !first || !second || question.mode === null) return;
-    moment.compute(cursorMs);
-    const { label } = bandById(question.band);
-    setSheets(linkSheets(describe(moment), [first, second], question.mode, label, cursorMs));
+    const weakest = moments.reduce(
+      (least, one, at) => (one.marginDb < moments[least]!.marginDb ? at : least),
+      0,
+    );
+    setLinkOf(pairsOf(stations.length)[weakest]!);
   };
   const moveCursor = (atMs: number) =>
     onCursor(Math.min(Math.max(atMs, view.shown.startMs), view.shown.endMs));
@@ -122,12 +129,25 @@ export function WindowDetail(props: Props) {
         quality={allUp ? judgedAt(judge, cursorMs, view.table) : null}
         link={moment}
       />
-      {moment ? (
+      {moments.length > 0 ? (
         <div>
           <Button look="bare" icon="arrowLeftRight" onClick={openLink}>
-            Link in both directions at {formatClock(cursorMs)}
+            {moment ? 'Link in both directions' : 'Links of every pair'} at {formatClock(cursorMs)}
           </Button>
-          <LinkDialog sheets={sheets} onClose={() => setSheets(null)} />
+          <LinkDialog
+            sheets={links?.sheets ?? null}
+            round={
+              links?.matrix && linkOf
+                ? {
+                    matrix: links.matrix,
+                    pair: linkOf,
+                    onPair: (from, to) =>
+                      setLinkOf({ first: Math.min(from, to), second: Math.max(from, to) }),
+                  }
+                : null
+            }
+            onClose={() => setLinkOf(null)}
+          />
         </div>
       ) : null}
       {width > 0 ? (
@@ -143,4 +163,33 @@ export function WindowDetail(props: Props) {
       {props.children}
     </section>
   );
+}
+
+/** The ledgers of one pair at the cursor, and of a round the margins of all. */
+function linksAt(
+  { question, stations }: Answer,
+  moments: readonly LinkMoment[],
+  timeMs: number,
+  pair: { first: number; second: number },
+) {
+  const pairs = pairsOf(stations.length).map(({ first, second }, at) => {
+    moments[at]!.compute(timeMs);
+    return { first, second, link: describe(moments[at]!) };
+  });
+  const { first, second } = pair;
+  const chosen = pairs.find((one) => one.first === first && one.second === second);
+  const setups = [first, second].map((at) => setupOn(stations[at]!, question.band));
+  if (!chosen || !setups[0] || !setups[1] || question.mode === null) return null;
+  const { label } = bandById(question.band);
+  return {
+    sheets: linkSheets(chosen.link, [setups[0], setups[1]], question.mode, label, timeMs),
+    matrix:
+      stations.length > 2
+        ? linkMatrix(
+            stations.map(({ callSign }) => callSign),
+            pairs,
+            timeMs,
+          )
+        : null,
+  };
 }

@@ -37,7 +37,7 @@ const Q65_PERIODS: Record<string, readonly [thresholdDb: number, spacingHz: numb
 const JT65_SPACING_HZ = 11_025 / 4096;
 
 /** Where CW changes from one-minute to 2.5-minute periods (handbook practice, read in the source). */
-const LONG_CW_FROM_MHZ = 300;
+export const LONG_CW_FROM_MHZ = 300;
 
 function figures(id: ModeId, label: string): ModeFigures {
   if (id === 'cw') {

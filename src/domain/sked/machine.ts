@@ -1,6 +1,9 @@
 import type { Interval } from '../time/interval';
+import { calendarOf, hasLapsed, stillIn, type CalendarDue } from './standing';
 import { slotProblems, type SlotProblem } from './slot';
 import type { SkedEventKind, SkedState } from './types';
+
+export { holdsBooking, hasLapsed } from './standing';
 
 export type PartyAnswer = 'waiting' | 'accepted' | 'declined';
 
@@ -8,6 +11,8 @@ export interface SkedParty {
   stationId: string;
   callSign: string;
   answer: PartyAnswer;
+  /** Whether the station has dropped out; it keeps its place in the history only. */
+  left: boolean;
 }
 
 /** What decides the life of a sked. The slot is the one last offered. */
@@ -15,17 +20,20 @@ export interface Sked extends Interval {
   state: SkedState;
   /** Raised by every change; a command names the version it was based on. */
   version: number;
-  /** The SEQUENCE that the next calendar message will carry (RFC 5545, 3.8.7.4). */
+  /** The SEQUENCE of the newest calendar message (RFC 5545, 3.8.7.4); every message raises it. */
   sequence: number;
   /** Station whose offer the slot is. */
   offeredBy: string;
   parties: SkedParty[];
 }
 
+/** What a station can do to a sked without naming a slot. */
+export type AnswerKind = 'accept' | 'decline' | 'dropOut' | 'withdraw' | 'cancel' | 'report';
+
 /** `by` is the station on whose behalf somebody acts, `version` the one the person saw. */
 export type SkedCommand =
   | { kind: 'move'; by: string; version: number; slot: Interval }
-  | { kind: 'accept' | 'decline' | 'withdraw' | 'cancel' | 'report'; by: string; version: number }
+  | { kind: AnswerKind; by: string; version: number }
   | { kind: 'lapse' };
 
 export interface SkedOffer {
@@ -42,12 +50,6 @@ export interface SkedContext {
 export interface SkedHappening extends Interval {
   kind: SkedEventKind;
   by: string | null;
-}
-
-/** A calendar message due by a change; the slot is the one it speaks of. */
-export interface CalendarDue extends Interval {
-  method: 'REQUEST' | 'CANCEL';
-  sequence: number;
 }
 
 export interface Refusal {
@@ -82,38 +84,41 @@ export function decideOffer(offer: SkedOffer, context: SkedContext): Decision {
     stationId,
     callSign,
     answer: stationId === offer.by ? 'accepted' : 'waiting',
+    left: false,
   }));
-  return {
-    ok: true,
-    sked: {
-      state: 'offered',
-      version: 1,
-      sequence: 0,
-      offeredBy: offer.by,
-      parties,
-      startMs,
-      endMs,
-    },
-    happenings: [{ kind: 'offered', by: offer.by, startMs, endMs }],
-    calendar: null,
+  const sked: Sked = {
+    state: 'offered',
+    version: 1,
+    sequence: 0,
+    offeredBy: offer.by,
+    parties,
+    startMs,
+    endMs,
   };
+  const happenings: SkedHappening[] = [{ kind: 'offered', by: offer.by, startMs, endMs }];
+  return { ok: true, sked, happenings, calendar: calendarOf(sked) };
 }
 
 /**
  * Applies one command to a sked: the next state with what happened, or a refusal with a sentence.
  *
  * A move is a new offer: the mover counts as having accepted, every other answer is reset. Moving an
- * agreed sked gives the agreed slot up at once (the calendar entry is cancelled) and the sked waits for
- * answers again; a declined one may be moved too, which is how a counter-offer follows a "no".
- * Agreed when every party accepted the same offer.
+ * agreed sked gives the agreed slot up at once (the calendar entry becomes tentative at the new time) and the sked waits
+ * for answers again; a declined one may be moved too, which is how a counter-offer follows a "no".
+ * Agreed when every party that is still in it accepted the same offer.
  */
 export function decide(sked: Sked, command: SkedCommand, context: SkedContext): Decision {
   if (command.kind === 'lapse') return lapse(sked, context);
-  if (!sked.parties.some((party) => party.stationId === command.by)) {
-    return refuse('notParty', 'Only the stations of a sked can answer it.');
-  }
+  const own = sked.parties.find((party) => party.stationId === command.by);
+  if (!own) return refuse('notParty', 'Only the stations of a sked can answer it.');
   if (command.version !== sked.version) {
     return refuse('stale', 'The sked changed since you opened it. Nothing was changed by you.');
+  }
+  if (own.left) {
+    return refuse(
+      'state',
+      `${own.callSign} has dropped out, so it has no part in the sked any more.`,
+    );
   }
   switch (command.kind) {
     case 'move':
@@ -122,6 +127,8 @@ export function decide(sked: Sked, command: SkedCommand, context: SkedContext): 
       return accept(sked, command.by, context);
     case 'decline':
       return decline(sked, command.by, context);
+    case 'dropOut':
+      return dropOut(sked, command.by, context);
     case 'withdraw':
       return withdraw(sked, command.by, context);
     case 'cancel':
@@ -129,16 +136,6 @@ export function decide(sked: Sked, command: SkedCommand, context: SkedContext): 
     case 'report':
       return report(sked, command.by, context);
   }
-}
-
-/** Whether the offer's time came without agreement, even if nobody has written that down yet. */
-export function hasLapsed(sked: Pick<Sked, 'state' | 'startMs'>, nowMs: number): boolean {
-  return sked.state === 'lapsed' || (sked.state === 'offered' && sked.startMs <= nowMs);
-}
-
-/** Whether the stations are taken for the slot. */
-export function holdsBooking(sked: Pick<Sked, 'state'>): boolean {
-  return sked.state === 'agreed' || sked.state === 'reported';
 }
 
 function move(sked: Sked, by: string, slot: Interval, { nowMs }: SkedContext): Decision {
@@ -154,24 +151,14 @@ function move(sked: Sked, by: string, slot: Interval, { nowMs }: SkedContext): D
     const sentence = 'That is the slot the sked has now. Choose another one.';
     return refuse('slot', sentence, [{ field: 'start', sentence }]);
   }
-  const wasAgreed = sked.state === 'agreed';
-  return {
-    ok: true,
-    sked: {
-      ...next(sked),
-      state: 'offered',
-      startMs: slot.startMs,
-      endMs: slot.endMs,
-      offeredBy: by,
-      sequence: sked.sequence + (wasAgreed ? 1 : 0),
-      parties: sked.parties.map((party) => ({
-        ...party,
-        answer: party.stationId === by ? 'accepted' : 'waiting',
-      })),
-    },
-    happenings: [{ kind: 'moved', by, startMs: slot.startMs, endMs: slot.endMs }],
-    calendar: wasAgreed ? calendar('CANCEL', sked) : null,
-  };
+  const { startMs, endMs } = slot;
+  const parties: SkedParty[] = sked.parties.map((party) => {
+    if (party.left) return { ...party };
+    return { ...party, answer: party.stationId === by ? 'accepted' : 'waiting' };
+  });
+  return told({ ...sked, state: 'offered', startMs, endMs, offeredBy: by, parties }, [
+    { kind: 'moved', by, startMs, endMs },
+  ]);
 }
 
 function accept(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
@@ -181,16 +168,15 @@ function accept(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
   if (before.answer === 'accepted') {
     return refuse('state', `${before.callSign} has accepted this slot already.`);
   }
-  const parties = answered(sked, by, 'accepted');
-  const agreed = parties.every((party) => party.answer === 'accepted');
-  const happenings = [happening(sked, 'accepted', by)];
-  if (!agreed) return { ok: true, sked: { ...next(sked), parties }, happenings, calendar: null };
-  return {
-    ok: true,
-    sked: { ...next(sked), state: 'agreed', parties, sequence: sked.sequence + 1 },
-    happenings: [...happenings, happening(sked, 'agreed', null)],
-    calendar: calendar('REQUEST', sked),
-  };
+  return settled(sked, answered(sked, by, 'accepted'), happening(sked, 'accepted', by));
+}
+
+/** The sked with these answers: agreed when nobody is left to answer. */
+function settled(sked: Sked, parties: SkedParty[], what: SkedHappening): Decision {
+  const agreed = stillIn(parties).every((party) => party.answer === 'accepted');
+  if (!agreed || sked.state === 'agreed') return told({ ...sked, parties }, [what]);
+  const happenings = [what, happening(sked, 'agreed', null)];
+  return told({ ...sked, state: 'agreed', parties }, happenings);
 }
 
 function decline(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
@@ -202,12 +188,29 @@ function decline(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
   if (by === sked.offeredBy) {
     return refuse('state', 'This is your own offer. Withdraw it if it no longer stands.');
   }
-  return {
-    ok: true,
-    sked: { ...next(sked), state: 'declined', parties: answered(sked, by, 'declined') },
-    happenings: [happening(sked, 'declined', by)],
-    calendar: null,
-  };
+  return told({ ...sked, state: 'declined', parties: answered(sked, by, 'declined') }, [
+    happening(sked, 'declined', by),
+  ]);
+}
+
+function dropOut(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
+  const open = mustBe(sked, ['offered', 'agreed'], 'be left', nowMs);
+  if (open) return open;
+  if (sked.endMs <= nowMs) {
+    return refuse('state', 'The slot is over. Report how it went instead.');
+  }
+  if (sked.state === 'offered' && by === sked.offeredBy) {
+    return refuse('state', 'This is your own offer. Withdraw it if it no longer stands.');
+  }
+  if (stillIn(sked.parties).length < 3) {
+    const instead = sked.state === 'agreed' ? 'Cancel the sked' : 'Decline the offer';
+    return refuse('state', `Two stations are left, and it takes two. ${instead} instead.`);
+  }
+  const parties = sked.parties.map((party) => ({
+    ...party,
+    left: party.left || party.stationId === by,
+  }));
+  return settled(sked, parties, happening(sked, 'droppedOut', by));
 }
 
 function withdraw(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
@@ -222,12 +225,7 @@ function withdraw(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
       'Only the station whose offer it is can withdraw it. You can decline it.',
     );
   }
-  return {
-    ok: true,
-    sked: { ...next(sked), state: 'withdrawn' },
-    happenings: [happening(sked, 'withdrawn', by)],
-    calendar: null,
-  };
+  return told({ ...sked, state: 'withdrawn' }, [happening(sked, 'withdrawn', by)]);
 }
 
 function cancel(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
@@ -239,12 +237,7 @@ function cancel(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
   if (sked.endMs <= nowMs) {
     return refuse('state', 'The slot is over. Report how it went instead.');
   }
-  return {
-    ok: true,
-    sked: { ...next(sked), state: 'cancelled', sequence: sked.sequence + 1 },
-    happenings: [happening(sked, 'cancelled', by)],
-    calendar: calendar('CANCEL', sked),
-  };
+  return told({ ...sked, state: 'cancelled' }, [happening(sked, 'cancelled', by)]);
 }
 
 function report(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
@@ -255,7 +248,7 @@ function report(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
   }
   return {
     ok: true,
-    sked: { ...next(sked), state: 'reported' },
+    sked: { ...sked, version: sked.version + 1, state: 'reported' },
     happenings: [happening(sked, 'reported', by)],
     calendar: null,
   };
@@ -264,12 +257,7 @@ function report(sked: Sked, by: string, { nowMs }: SkedContext): Decision {
 function lapse(sked: Sked, { nowMs }: SkedContext): Decision {
   if (sked.state !== 'offered') return refuse('state', stateSentence(sked.state, 'lapse'));
   if (sked.startMs > nowMs) return refuse('early', 'The offered time has not come yet.');
-  return {
-    ok: true,
-    sked: { ...next(sked), state: 'lapsed' },
-    happenings: [happening(sked, 'lapsed', null)],
-    calendar: null,
-  };
+  return told({ ...sked, state: 'lapsed' }, [happening(sked, 'lapsed', null)]);
 }
 
 const STATE_WORDS: Record<SkedState, string> = {
@@ -297,8 +285,10 @@ function mustBe(
   return allowed.includes(state) ? null : refuse('state', stateSentence(state, verb));
 }
 
-function next(sked: Sked): Sked {
-  return { ...sked, version: sked.version + 1 };
+/** A decision that calendars must learn of. */
+function told(changed: Sked, happenings: SkedHappening[]): Decision {
+  const sked = { ...changed, version: changed.version + 1, sequence: changed.sequence + 1 };
+  return { ok: true, sked, happenings, calendar: calendarOf(sked) };
 }
 
 function answered(sked: Sked, stationId: string, answer: PartyAnswer): SkedParty[] {
@@ -309,10 +299,6 @@ function answered(sked: Sked, stationId: string, answer: PartyAnswer): SkedParty
 
 function happening(sked: Sked, kind: SkedEventKind, by: string | null): SkedHappening {
   return { kind, by, startMs: sked.startMs, endMs: sked.endMs };
-}
-
-function calendar(method: CalendarDue['method'], sked: Sked): CalendarDue {
-  return { method, sequence: sked.sequence, startMs: sked.startMs, endMs: sked.endMs };
 }
 
 function refuse(code: Refusal['code'], sentence: string, problems: SlotProblem[] = []): Decision {

@@ -29,11 +29,18 @@ function isOffer(event: SkedEventView): boolean {
   return event.kind === 'offered' || event.kind === 'moved';
 }
 
+/** "Edda, QB7TID"; the call sign alone where nobody has given a name for it. */
+export function actorName(by: { personName: string | null; callSign: string }): string {
+  return by.personName && by.personName !== by.callSign
+    ? `${by.personName}, ${by.callSign}`
+    : by.callSign;
+}
+
 /** "You", "Edda, QB7TID", or "Nobody" where time alone acted. */
 export function whoActed(event: SkedEventView): string {
   if (event.byViewer) return 'You';
   if (!event.callSign) return '';
-  return event.personName ? `${event.personName}, ${event.callSign}` : event.callSign;
+  return actorName({ personName: event.personName, callSign: event.callSign });
 }
 
 /** The history without the "agreed" that follows from the last acceptance. */
@@ -65,11 +72,12 @@ export function situation(sked: SkedView): string {
   const partners = partnersOf(sked.parties);
   const last = sked.events.filter(isOffer).at(-1);
   const before = sked.events.filter(isOffer).at(-2);
+  if (sked.droppedOut) return droppedOutSituation(sked);
   switch (sked.state) {
     case 'offered': {
       if (!sked.waitsForViewer) {
         const waiting = sked.parties.filter((party) => party.answer === 'waiting');
-        return `${listOf(waiting.map((party) => party.callSign))} ${waiting.length === 1 ? 'has' : 'have'} not answered yet.`;
+        return `${left(sked)}${listOf(waiting.map((party) => party.callSign))} ${waiting.length === 1 ? 'has' : 'have'} not answered yet.`;
       }
       const who = last?.byViewer ? 'You' : (last?.personName ?? last?.callSign ?? partners);
       const ask = last?.byViewer ? 'ask' : 'asks';
@@ -78,7 +86,7 @@ export function situation(sked: SkedView): string {
       return `${who} ${ask} for this slot.`;
     }
     case 'agreed':
-      return 'Every station has accepted this slot. It stands in your calendar.';
+      return `${left(sked)}Every station ${sked.leftParties.length > 0 ? 'that is left ' : ''}has accepted this slot. It stands in your calendar.`;
     case 'declined': {
       const declined = sked.events.filter((event) => event.kind === 'declined').at(-1);
       const who = declined ? whoActed(declined) : partners;
@@ -93,6 +101,26 @@ export function situation(sked: SkedView): string {
     case 'reported':
       return `Reported: ${sked.reports.map((report) => `${report.callSign} ${RESULT_WORDS[report.result]}`).join(', ')}.`;
   }
+}
+
+/** "QC2FAR dropped out. ", or nothing. */
+function left(sked: SkedView): string {
+  const names = sked.leftParties.map((party) => party.callSign);
+  return names.length > 0 ? `${listOf(names)} dropped out. ` : '';
+}
+
+function droppedOutSituation(sked: SkedView): string {
+  const rest = listOf(sked.parties.map((party) => party.callSign));
+  const now: Record<SkedView['state'], string> = {
+    offered: `${rest} have yet to agree on the slot.`,
+    agreed: `${rest} keep the slot.`,
+    declined: `${rest} have not agreed on a slot.`,
+    withdrawn: 'The offer was taken back.',
+    lapsed: 'Its time came without agreement.',
+    cancelled: `${rest} cancelled the sked.`,
+    reported: `${rest} worked it.`,
+  };
+  return `You dropped out. ${now[sked.state]}`;
 }
 
 /** "15 min later than before", "the same start, 10 min longer". */
@@ -115,13 +143,14 @@ export interface NextStep {
 
 /** What happens next, in order; empty when nothing will. */
 export function nextSteps(sked: SkedView, nowMs: number): NextStep[] {
+  if (sked.droppedOut) return [];
   const lapse = {
     lead: `${formatUtc(sked.startMs)}.`,
     text: 'Without agreement the offer lapses, and everybody gets a mail.',
   };
   const work = {
     lead: `${formatUtcRange(sked)}.`,
-    text: 'Both stations are on frequency. Check T/R changeover before power.',
+    text: `${sked.parties.length > 2 ? 'All' : 'Both'} stations are on frequency. Check T/R changeover before power.`,
   };
   const report = {
     lead: `After ${formatUtc(sked.endMs)}.`,
@@ -137,7 +166,10 @@ export function nextSteps(sked: SkedView, nowMs: number): NextStep[] {
         ? 'You accept.'
         : `${others} ${waiting.length === 1 ? 'accepts' : 'accept'}.`;
       return [
-        { lead: accept, text: `The sked is agreed. ${both} a mail with a calendar entry.` },
+        {
+          lead: accept,
+          text: `The sked is agreed. ${both} a mail, and the calendar entry becomes firm.`,
+        },
         work,
         report,
         lapse,

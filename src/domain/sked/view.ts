@@ -14,11 +14,17 @@ export interface SkedSummary extends Interval {
   frequencyMhz: number;
   mode: ModeId;
   offeredBy: string;
-  /** The viewer's own first, else in the order of the offer. */
+  /** Those still in it: the viewer's own first, else in the order of the offer. */
   parties: SkedPartyView[];
+  /** Stations that dropped out. */
+  leftParties: SkedPartyView[];
+  /** Whether the viewer has part in it only through stations that dropped out. */
+  droppedOut: boolean;
   waitsForViewer: boolean;
   /** Whether a report of one of the viewer's stations is still to come. */
   reportDue: boolean;
+  /** Where the parties' results contradict each other, in sentences. */
+  disagreements: string[];
 }
 
 export interface SkedPartyView {
@@ -44,6 +50,9 @@ export interface SkedReportView {
   stationId: string;
   callSign: string;
   result: SkedResult;
+  /** As typed, empty where none was given. */
+  reportSent: string;
+  reportReceived: string;
   words: string;
   atMs: number;
 }
@@ -52,6 +61,7 @@ export interface SkedReportView {
 export interface SkedChoices {
   accept: string | null;
   decline: string | null;
+  dropOut: string | null;
   withdraw: string | null;
   cancel: string | null;
   move: string | null;

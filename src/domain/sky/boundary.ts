@@ -14,9 +14,8 @@ export interface Boundary {
   readonly halfNorth: number;
 }
 
-/** Positive above the elevation, which must be airless. */
-export function elevationBoundary(elevationDeg: number): Boundary {
-  const level = Math.sin(elevationDeg * DEG);
+/** Positive above the elevation of this sine, which must be airless. */
+export function elevationBoundary(level: number): Boundary {
   return { east: 0, north: 0, up: 1, level, halfEast: 0, halfNorth: 0 };
 }
 

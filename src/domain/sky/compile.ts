@@ -23,13 +23,13 @@ export interface SkyCause {
   name?: string | undefined;
 }
 
-interface AzimuthSpan {
+export interface AzimuthSpan {
   readonly from: Boundary;
   readonly to: Boundary;
   readonly widthDeg: number;
 }
 
-interface Sector {
+export interface Sector {
   readonly span: AzimuthSpan;
   readonly lowSin: number;
   readonly highSin: number;
@@ -108,31 +108,9 @@ export function compileSky(limits: SkyLimits, refraction = false): CompiledSky {
   };
 }
 
-/**
- * Sines of the lowest and highest elevation of a sky that nothing else limits, the same as `compileSky` would hold
- * them; null where azimuths, sectors or a profile matter.
- */
-export function elevationsOnly(
-  limits: SkyLimits,
-  refraction = false,
-): { floorSin: number; highSin: number } | null {
-  const { elevationFromDeg: from, elevationToDeg: to, transmitElevationFromDeg: transmit } = limits;
-  const azimuths = limits.azimuthFromDeg !== undefined && limits.azimuthToDeg !== undefined;
-  if (azimuths || limits.blocked?.length || limits.horizon?.length) return null;
-  const seenDeg = from ?? 0;
-  const floorDeg = Math.max(seenDeg, transmit ?? seenDeg);
-  return {
-    floorSin: limitSine(floorDeg, refraction),
-    highSin: to === undefined ? 2 : limitSine(to, refraction),
-  };
-}
-
-function airless(elevationDeg: number, refraction: boolean): number {
-  return refraction ? unrefracted(elevationDeg) : elevationDeg;
-}
-
-function limitSine(elevationDeg: number, refraction: boolean): number {
-  return Math.sin(airless(elevationDeg, refraction) * DEG);
+/** Sine of the airless elevation at which a limit lies. */
+export function limitSine(elevationDeg: number, refraction: boolean): number {
+  return Math.sin((refraction ? unrefracted(elevationDeg) : elevationDeg) * DEG);
 }
 
 /** The sine of a limit that may be absent. */
@@ -140,7 +118,7 @@ function sineOr(without: number, elevationDeg: number | undefined, refraction: b
   return elevationDeg === undefined ? without : limitSine(elevationDeg, refraction);
 }
 
-function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
+export function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
   return {
     from: azimuthBoundary(fromDeg),
     to: azimuthBoundary(toDeg),
@@ -148,7 +126,7 @@ function azimuthSpan(fromDeg: number, toDeg: number): AzimuthSpan {
   };
 }
 
-function compileSector(sector: BlockedSector, refraction: boolean): Sector {
+export function compileSector(sector: BlockedSector, refraction: boolean): Sector {
   return {
     span: azimuthSpan(sector.azimuthFromDeg, sector.azimuthToDeg),
     lowSin: sector.elevationFromDeg <= -90 ? -2 : limitSine(sector.elevationFromDeg, refraction),
@@ -165,10 +143,10 @@ function elevationBoundaries(
   const wanted = elevationsDeg.filter(
     (el): el is number => el !== undefined && el >= floorDeg && el < 90,
   );
-  return [...new Set(wanted)].map((el) => elevationBoundary(airless(el, refraction)));
+  return [...new Set(wanted)].map((el) => elevationBoundary(limitSine(el, refraction)));
 }
 
-function spanHolds(span: AzimuthSpan, east: number, north: number): boolean {
+export function spanHolds(span: AzimuthSpan, east: number, north: number): boolean {
   if (span.widthDeg >= 360) return true;
   const afterFrom = span.from.east * east + span.from.north * north >= 0;
   const beforeTo = span.to.east * east + span.to.north * north <= 0;

@@ -80,7 +80,7 @@ export function formatLocalRange(
 function rangeIn(range: Interval, timeZone: string, withYear: boolean): string {
   const start = inZone(range.startMs, timeZone);
   const end = inZone(range.endMs, timeZone);
-  if (start.hasSame(end, 'day')) {
+  if (start.year === end.year && start.ordinal === end.ordinal) {
     return `${dayOf(start, withYear)} ${clockOf(start)}–${clockOf(end)}`;
   }
   return `${dayOf(start, withYear)} ${clockOf(start)} – ${dayOf(end, withYear)} ${clockOf(end)}`;

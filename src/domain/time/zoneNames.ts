@@ -10,3 +10,9 @@ export function zoneNamesByRegion(): { region: string; zones: string[] }[] {
   }
   return [...regions].map(([region, zones]) => ({ region, zones }));
 }
+
+/** "Etc/GMT-1" as "UTC+1": the signs of these names are the other way round. Any other name as it is. */
+export function zoneLabel(zone: string): string {
+  const [, sign, hours] = /^Etc\/GMT([+-])(\d+)$/.exec(zone) ?? [];
+  return hours === undefined ? zone : `UTC${sign === '-' ? '+' : '\u2212'}${hours}`;
+}

@@ -151,7 +151,7 @@ class PairRow {
   readonly #words: Int32Array;
   readonly #count: number;
   readonly #lengthMs: number;
-  /** Of each stretch of all stations: begin, end, step of the begin, station. */
+  /** Of each stretch of all stations: begin, end, station. */
   readonly #seen: number;
   readonly #stretches: number;
   /** Begins and ends of the first station's stretches, and one at the end of time, so that nobody asks how many. */
@@ -176,7 +176,7 @@ class PairRow {
     this.#stretches = stretches;
     this.#steps = (this.#lengthMs >> STEP_BITS) + 1;
     this.#seen = pairCount(stations) + 1;
-    this.#row = this.#seen + 4 * stretches;
+    this.#row = this.#seen + 3 * stretches;
     this.#next = this.#row + 2 * longestList(seenTimes) + 4;
     this.#begins = this.#next + this.#steps;
     this.#ends = this.#begins + most;
@@ -187,12 +187,11 @@ class PairRow {
     for (let station = 0; station < stations; station += 1) {
       const to = firsts[station + 1]!;
       if (to === firsts[station]) this.#blind.push(station);
-      for (let stretch = firsts[station]!; stretch < to; stretch += 1, at += 4) {
+      for (let stretch = firsts[station]!; stretch < to; stretch += 1, at += 3) {
         const begin = beginsMs[stretch]! - startMs;
         words[at] = begin;
         words[at + 1] = endsMs[stretch]! - startMs;
-        words[at + 2] = this.#next + (begin >> STEP_BITS);
-        words[at + 3] = station;
+        words[at + 2] = station;
       }
     }
   }
@@ -220,18 +219,19 @@ class PairRow {
     // The pair with station s ends at `pair + s`.
     const pair = (pairIndex(this.#count, first, first + 1) - first) | 0;
     const toEnds = (this.#ends - this.#begins) | 0;
-    const stop = (this.#seen + 4 * this.#stretches) | 0;
+    const stop = (this.#seen + 3 * this.#stretches) | 0;
     let found = (this.#begins + words[pair + first]!) | 0;
     const base = this.#begins | 0;
+    const next = this.#next | 0;
     const leastMs = Math.min(minimumMs, this.#lengthMs + 1) | 0;
     for (
-      let other = (this.#seen + 4 * firsts[first + 1]!) | 0;
+      let other = (this.#seen + 3 * firsts[first + 1]!) | 0;
       other < stop;
-      other = (other + 4) | 0
+      other = (other + 3) | 0
     ) {
       const otherBegin = words[other]!;
       const otherEnd = words[other + 1]!;
-      let one = words[words[other + 2]!]!;
+      let one = words[next + (otherBegin >> STEP_BITS)]!;
       do {
         const later = (words[one]! - otherBegin) | 0;
         const longer = (words[one + 1]! - otherEnd) | 0;
@@ -242,7 +242,7 @@ class PairRow {
         found = (found + 1 - ((((end - begin) | 0) - leastMs) >>> 31)) | 0;
         one = (one + 2) | 0;
       } while (words[one]! < otherEnd);
-      words[pair + words[other + 3]!] = (found - base) | 0;
+      words[pair + words[other + 2]!] = (found - base) | 0;
     }
     for (const station of this.#blind) {
       if (station > first) words[pair + station] = words[pair + station - 1]!;
@@ -252,11 +252,11 @@ class PairRow {
   #lay(first: number): void {
     const words = this.#words;
     const { firsts } = this.seenTimes;
-    const to = this.#seen + 4 * firsts[first + 1]!;
+    const to = this.#seen + 3 * firsts[first + 1]!;
     let row = this.#row;
     const next = this.#next;
     let step = next;
-    for (let at = this.#seen + 4 * firsts[first]!; at < to; at += 4, row += 2) {
+    for (let at = this.#seen + 3 * firsts[first]!; at < to; at += 3, row += 2) {
       const end = words[at + 1]!;
       words[row] = words[at]!;
       words[row + 1] = end;

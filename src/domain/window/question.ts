@@ -82,7 +82,7 @@ export function parseQuestion(
 
   const lows = params.getAll('low');
   params.getAll('station').forEach((raw, index) => {
-    const token = raw.trim().slice(0, 80);
+    const token = raw.trim().slice(0, 160);
     if (token === '') return;
     if (question.stations.includes(token)) {
       complain('station', `${token} is named twice. Each station counts once.`);

@@ -37,7 +37,8 @@ export function gridRoots(grid: GridFunction, first: number, last: number, roots
   }
 }
 
-function isDip(values: Float64Array, node: number): boolean {
+/** Whether there may be an extremum on the other side of zero than the node, or touching it, next to the node. */
+export function isDip(values: Float64Array, node: number): boolean {
   const before = values[node - 1];
   const here = values[node]!;
   const after = values[node + 1];
@@ -50,7 +51,8 @@ function isDip(values: Float64Array, node: number): boolean {
   return extreme < 0 !== here < 0 || Math.abs(extreme) < GRAZING;
 }
 
-function dipRoots(grid: GridFunction, node: number, roots: number[]): void {
+/** Appends both zeros around the extremum next to a node, if there are any. */
+export function dipRoots(grid: GridFunction, node: number, roots: number[]): void {
   const beforeMs = grid.gridStartMs + (node - 1) * grid.gridStepMs;
   const afterMs = beforeMs + 2 * grid.gridStepMs;
   crossingsAroundTurn(grid, beforeMs, afterMs, grid.values[node]! < 0, roots);
@@ -70,7 +72,8 @@ export function crossingsAroundTurn(
   roots.push(bracketedRoot(f, fromMs, turnMs), bracketedRoot(f, turnMs, toMs));
 }
 
-function simpleRoot(grid: GridFunction, node: number): number {
+/** The zero between a node and the next, at which the signs differ. */
+export function simpleRoot(grid: GridFunction, node: number): number {
   const { values, gridStartMs, gridStepMs } = grid;
   const before = values[node - 1];
   const here = values[node]!;

@@ -1,3 +1,4 @@
+import type { GuestPlace } from '../guest/guest';
 import type { SkedState } from '../sked/types';
 import type { BandId } from '../station/bands';
 import type { BandSetup } from '../station/setup';
@@ -20,6 +21,8 @@ export interface ChosenStation extends WindowStation {
   equipment: BandEquipment[];
   /** Whether the viewer belongs to its crew. */
   own: boolean;
+  /** Set for somebody without an account, who can be offered a sked by mail. */
+  guest?: GuestPlace | undefined;
 }
 
 /** The station's equipment on a band, or null. */

@@ -1,9 +1,10 @@
 import { StationTrack } from '../ephemeris/track';
 import { buildMoonTable, type MoonTable } from '../ephemeris/table';
-import { compileSky, elevationsOnly, type CompiledSky } from '../sky/compile';
+import { compileSky, type CompiledSky } from '../sky/compile';
+import { freeSky } from '../sky/free';
 import type { Interval } from '../time/interval';
 import { BoundaryGrid } from './boundaryGrid';
-import { ElevationScan } from './elevationScan';
+import { FreeScan } from './freeScan';
 import { stationTimeline } from './stationTimeline';
 import type { WindowStation } from './types';
 
@@ -31,31 +32,20 @@ export function seenTimes(
   const table = buildMoonTable(span);
   const list = new StretchList();
   const firsts = new Int32Array(stations.length + 1);
-  const scan = new ElevationScan(table);
-  const anySky = new AnySky(table);
+  const scan = new FreeScan(table);
+  const profiles = new ProfileSkies(table);
   stations.forEach((station, index) => {
     list.usable = station.usable;
-    const elevations = elevationsOnly(station.sky, refraction);
-    if (elevations) scan.stretches(station.site, elevations, list);
-    else anySky.stretches(station, withoutReasons(compileSky(station.sky, refraction)), list);
+    const sky = freeSky(station.sky, refraction);
+    if (sky) scan.stretches(station.site, sky, list);
+    else profiles.stretches(station, compileSky(station.sky, refraction), list);
     firsts[index + 1] = list.length;
   });
   return { ...span, stations: stations.length, firsts, ...list.finish() };
 }
 
-/**
- * The same free sky, without asking which of several limits forbids: what lies below the highest of the lower
- * elevation limits is forbidden anyway, and no crossing there needs to be solved.
- */
-function withoutReasons(sky: CompiledSky): CompiledSky {
-  const floorSin = Math.max(sky.floorSin, sky.lowSin, sky.transmitSin);
-  if (floorSin === sky.floorSin) return sky;
-  const boundaries = sky.boundaries.filter(({ up, level }) => up === 0 || level >= floorSin);
-  return { ...sky, floorSin, boundaries };
-}
-
-/** Skies with every kind of limit, in one track's arrays. */
-class AnySky {
+/** Skies with a horizon profile, in one track's arrays. */
+class ProfileSkies {
   #track: StationTrack | undefined;
   #grid: BoundaryGrid | undefined;
 

@@ -1,6 +1,7 @@
 import Database from 'better-sqlite3';
 import { CompiledQuery, Kysely, SqliteAdapter, SqliteDialect, SqliteDriver } from 'kysely';
 import type { DatabaseConnection } from 'kysely';
+import { PatientConnection } from './patience';
 import type { Tables } from './tables';
 
 export type Db = Kysely<Tables>;
@@ -10,7 +11,10 @@ export type Db = Kysely<Tables>;
  * Throws `DatabaseBroken` when the file is not a usable SQLite database.
  */
 export function openDatabase(file: string): Db {
-  return new Kysely<Tables>({ dialect: new Dialect(openSqlite(file)) });
+  const sqlite = openSqlite(file);
+  // From here on `PatientConnection` waits.
+  sqlite.pragma('busy_timeout = 0');
+  return new Kysely<Tables>({ dialect: new Dialect(sqlite) });
 }
 
 export function openSqlite(file: string): Database.Database {
@@ -61,6 +65,13 @@ class Adapter extends SqliteAdapter {
 
 /** Takes the write lock at the start: a transaction that reads first and writes later would fail. */
 class Driver extends SqliteDriver {
+  #patient: PatientConnection | undefined;
+
+  override async acquireConnection(): Promise<DatabaseConnection> {
+    const connection = await super.acquireConnection();
+    return (this.#patient ??= new PatientConnection(connection));
+  }
+
   override async beginTransaction(connection: DatabaseConnection): Promise<void> {
     await connection.executeQuery(CompiledQuery.raw('begin immediate'));
   }

@@ -34,6 +34,8 @@ export interface PersonTokenTable {
   created_at: number;
   expires_at: number;
   used_at: number | null;
+  /** Name and time zone typed on registering, until the address is confirmed. */
+  registration_json: Generated<string | null>;
 }
 
 export interface StationTable {
@@ -144,6 +146,8 @@ export interface SkedEventTable {
   end_at: number;
   words: Generated<string>;
   at: number;
+  /** SEQUENCE of the newest calendar message after it. */
+  sequence: Generated<number>;
 }
 
 export interface SkedReportTable {
@@ -176,6 +180,13 @@ export interface GuestLinkTable {
   created_at: number;
   expires_at: number;
   used_at: number | null;
+}
+
+/** When somebody first offered a sked to somebody without an account. */
+export interface GuestOfferTable {
+  by_person_id: string;
+  to_person_id: string;
+  first_at: number;
 }
 
 export interface MailBlockTable {
@@ -386,6 +397,7 @@ export interface Tables {
   sked_report: SkedReportTable;
   sked_message: SkedMessageTable;
   guest_link: GuestLinkTable;
+  guest_offer: GuestOfferTable;
   mail_block: MailBlockTable;
   mail_preference: MailPreferenceTable;
   digest_sent: DigestSentTable;
@@ -413,3 +425,7 @@ export type SkedPartyRow = Selectable<SkedPartyTable>;
 export type SkedEventRow = Selectable<SkedEventTable>;
 export type OutboxRow = Selectable<OutboxTable>;
 export type NewOutboxRow = Insertable<OutboxTable>;
+export type ActivityRow = Selectable<ActivityTable>;
+export type ActivityRevisionRow = Selectable<ActivityRevisionTable>;
+export type PlanRunRow = Selectable<PlanRunTable>;
+export type ActivitySlotRow = Selectable<ActivitySlotTable>;

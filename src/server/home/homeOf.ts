@@ -26,7 +26,9 @@ export async function homeOf(services: Services, viewer: Viewer): Promise<HomeDa
   const stations = await myStations(services, viewer);
   const waiting = await waitsForViewer(services, viewer);
   const { skeds } = await listSkeds(services, viewer, { when: 'coming' });
-  const open = skeds.filter((sked) => sked.state === 'agreed' || sked.state === 'offered');
+  const open = skeds.filter(
+    (sked) => !sked.droppedOut && (sked.state === 'agreed' || sked.state === 'offered'),
+  );
   const next = open.find((sked) => sked.state === 'agreed');
   const ownId = next?.parties.find((party) => party.mine)?.stationId;
   const station = stations.find(({ id }) => id === ownId) ?? stations[0];

@@ -11,7 +11,10 @@ const ALWAYS: Record<string, string> = {
 
 /** Adds what every answer carries. The policy for scripts and styles comes from Astro, per page. */
 export function addSecurityHeaders(headers: Headers, config: Config): void {
+  // An answer whose address is a secret may ask for more.
+  const silent = headers.get('referrer-policy') === 'no-referrer';
   for (const [name, value] of Object.entries(ALWAYS)) headers.set(name, value);
+  if (silent) headers.set('referrer-policy', 'no-referrer');
   const isPage = headers.get('content-type')?.startsWith('text/html') ?? false;
   const policy = headers.get('content-security-policy') ?? (isPage ? '' : "default-src 'none'");
   const parts = [policy.replace(/[;\s]+$/, ''), "frame-ancestors 'none'"].filter(Boolean);

@@ -1,4 +1,5 @@
 import { paths } from '../../paths';
+import { isSecretPage } from './secretPages';
 
 const LOOPBACK = ['127.0.0.1', 'localhost', '[::1]'];
 
@@ -25,20 +26,44 @@ const SAFE_METHODS = ['GET', 'HEAD', 'OPTIONS'];
 /** Stateless computations; they change nothing, so anybody may call them from anywhere. */
 const OPEN_CALCULATORS: readonly string[] = [paths.api.moon, paths.api.windows, paths.api.link];
 
+/** Exactly one step below it: the token in the address is checked by the page itself. */
+const UNSUBSCRIBE = new RegExp(`^(${paths.unsubscribe('[^/]+')}|${paths.noMore('[^/]+')})$`);
+
+/** Asked by programs that show a secret of their own in a header, which no page of somebody else's can. */
+const BY_SECRET: readonly string[] = [paths.api.inboundMail];
+
 interface Asked {
   method: string;
   pathname: string;
+  /** What follows the path, with its question mark; there an action can be named. */
+  search: string;
   headers: Headers;
 }
 
 /**
  * Whether a request may change something: it comes from a page of ours. Browsers always tell the
- * origin of a POST from a form or a script; one that does not must at least say "same-origin".
+ * origin of a POST from a form or a script; one that does not must at least say "same-origin". On pages whose address
+ * is a secret that secret is what allows a change, and no cookie does.
  */
-export function mayChange({ method, pathname, headers }: Asked, publicUrl: string): boolean {
+export function mayChange(
+  { method, pathname, search, headers }: Asked,
+  publicUrl: string,
+): boolean {
   if (SAFE_METHODS.includes(method.toUpperCase())) return true;
-  if (OPEN_CALCULATORS.includes(pathname)) return true;
+  if (OPEN_CALCULATORS.includes(pathname) || BY_SECRET.includes(pathname)) return true;
+  // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query.
+  if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname) && search === '') return true;
+  // A form on a page that tells nobody its address has the origin "null" (Fetch, 3.2).
+  if (isSecretPage(pathname) && headers.get('origin') === 'null') {
+    return ['same-origin', null].includes(headers.get('sec-fetch-site'));
+  }
+  return isFromOwnPage(headers, publicUrl);
+}
+
+/** Whether the browser says that a page of ours sent this. */
+export function isFromOwnPage(headers: Headers, publicUrl: string): boolean {
   const origin = headers.get('origin');
+  const site = headers.get('sec-fetch-site');
   if (origin !== null) return ownOrigins(publicUrl).includes(origin);
-  return headers.get('sec-fetch-site') === 'same-origin';
+  return site === 'same-origin';
 }

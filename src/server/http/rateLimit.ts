@@ -1,5 +1,6 @@
-import type { APIContext } from 'astro';
+import type { APIContext, AstroGlobal } from 'astro';
 import { RateLimiterMemory, RateLimiterRes } from 'rate-limiter-flexible';
+import type { Viewer } from '../auth/viewer';
 import { TooManyRequests } from '../errors';
 import { services } from '../services';
 import { clientKey } from './clientAddress';
@@ -30,7 +31,12 @@ export async function limitRate(bucket: string, key: string, perMinute: number):
 }
 
 /** For the open calculators: counts this request for its client. Throws `TooManyRequests`. */
-export async function limitCalculator(context: APIContext): Promise<void> {
+export async function limitCalculator(context: APIContext | AstroGlobal): Promise<void> {
   const { calculatorRequestsPerMinute } = services().config;
   await limitRate('calculator', clientKey(context), calculatorRequestsPerMinute);
+}
+
+/** For pages that compute for everybody: visitors without an account share the calculators' count, people have none. */
+export async function limitVisitor(context: AstroGlobal, viewer: Viewer | null): Promise<void> {
+  if (!viewer) await limitCalculator(context);
 }

@@ -89,11 +89,16 @@ export async function readJson<T extends z.ZodType>(
 
 /** The body as text; throws `BodyTooLarge` as soon as more than `maxBytes` have come. */
 export async function readText(request: Request, maxBytes: number): Promise<string> {
+  return (await readBytes(request, maxBytes)).toString('utf8');
+}
+
+/** The body as it came; throws `BodyTooLarge` as soon as more than `maxBytes` have come. */
+export async function readBytes(request: Request, maxBytes: number): Promise<Buffer> {
   const tooLarge = new BodyTooLarge(
     `The body is larger than ${Math.floor(maxBytes / 1000)} kB, the most that is read here.`,
   );
   if (Number(request.headers.get('content-length') ?? 0) > maxBytes) throw tooLarge;
-  if (!request.body) return '';
+  if (!request.body) return Buffer.alloc(0);
   const chunks: Uint8Array[] = [];
   let size = 0;
   for await (const chunk of request.body as unknown as AsyncIterable<Uint8Array>) {
@@ -101,7 +106,7 @@ export async function readText(request: Request, maxBytes: number): Promise<stri
     if (size > maxBytes) throw tooLarge;
     chunks.push(chunk);
   }
-  return Buffer.concat(chunks).toString('utf8');
+  return Buffer.concat(chunks);
 }
 
 /** Checks a value; throws `InvalidInput` listing every problem with its path. */

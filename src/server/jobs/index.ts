@@ -1,5 +1,12 @@
+import { remindDueRosters } from '../activities/remindRoster';
+import { workPlanRuns } from '../activities/workPlanRuns';
+import { sendDigests } from '../digest/sendDigests';
+import { readInboundFolder } from '../inbound/readInboundFolder';
 import { deliverDue } from '../mail/deliver';
+import { limitWaits } from '../mail/limitWaits';
 import { smtpTransport } from '../mail/transport';
+import { keepReminders } from '../reminders/keepReminders';
+import { queueReminders } from '../reminders/queueReminders';
 import type { Services } from '../services';
 import { lapseDueSkeds } from '../skeds/lapseDueSkeds';
 import { beat } from './heartbeat';
@@ -26,10 +33,61 @@ export function jobsOf(services: Services): Job[] {
   return [
     ...carriers,
     {
+      name: 'limit waits after a clock step',
+      everyMs: SECOND_MS,
+      run: async () => {
+        await limitWaits(services);
+        return false;
+      },
+    },
+    {
       name: 'lapse offers whose time came',
       everyMs: 15 * SECOND_MS,
       run: async () => {
         await lapseDueSkeds(services);
+        return false;
+      },
+    },
+    ...(services.config.inbound.folder === null
+      ? []
+      : [
+          {
+            name: 'read mails that came in',
+            everyMs: 5 * SECOND_MS,
+            run: async () => (await readInboundFolder(services)) > 0,
+          },
+        ]),
+    {
+      name: 'keep reminders',
+      everyMs: 20 * SECOND_MS,
+      run: async () => {
+        await keepReminders(services);
+        return false;
+      },
+    },
+    {
+      name: 'queue reminders',
+      everyMs: 5 * SECOND_MS,
+      run: async () => (await queueReminders(services)) > 0,
+    },
+    {
+      name: 'send digests',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await sendDigests(services);
+        return false;
+      },
+    },
+    {
+      name: 'compute plans',
+      everyMs: SECOND_MS,
+      run: () => workPlanRuns(services),
+    },
+    {
+      name: 'remind rosters before answers are due',
+      everyMs: 60 * SECOND_MS,
+      run: async () => {
+        await remindDueRosters(services);
         return false;
       },
     },

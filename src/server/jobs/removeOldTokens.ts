@@ -18,6 +18,10 @@ export async function removeOldTokens({ db, now }: Services): Promise<number> {
       .deleteFrom('crew_invitation')
       .where('expires_at', '<', before)
       .executeTakeFirst();
-    return Number(tokens.numDeletedRows + invitations.numDeletedRows);
+    const links = await tx
+      .deleteFrom('guest_link')
+      .where('expires_at', '<', before)
+      .executeTakeFirst();
+    return Number(tokens.numDeletedRows + invitations.numDeletedRows + links.numDeletedRows);
   });
 }

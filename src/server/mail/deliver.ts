@@ -2,6 +2,7 @@ import { sql } from 'kysely';
 import type { Db } from '../db/connection';
 import type { OutboxRow } from '../db/tables';
 import { log } from '../log';
+import { dropOutdated } from '../reminders/dropOutdated';
 import type { Services } from '../services';
 import { backoffMs } from './backoff';
 import { NotTaken, type SendMail } from './transport';
@@ -48,6 +49,7 @@ async function lease({ db, now }: Services, options: DeliverOptions): Promise<Ou
 
 async function deliver(services: Services, options: DeliverOptions, mail: OutboxRow) {
   const { db, now } = services;
+  if (await dropOutdated(services, mail)) return;
   try {
     await options.send(mail, AbortSignal.timeout(Math.round(options.leaseMs * 0.75)));
   } catch (error) {
@@ -56,36 +58,47 @@ async function deliver(services: Services, options: DeliverOptions, mail: Outbox
     await recordFailure(services, mail, failure);
     return;
   }
-  await update(db, mail.id, { sent_at: now(), leased_until: null, last_error: null });
+  await update(db, mail, {
+    sent_at: now(),
+    set_aside_at: null,
+    leased_until: null,
+    last_error: null,
+  });
   log.info({ outboxId: mail.id, attempts: mail.attempts }, 'mail sent');
 }
 
-async function recordFailure({ db, now }: Services, mail: OutboxRow, failure: NotTaken) {
+/** Only while no later attempt has begun: what that one does counts. */
+async function recordFailure(services: Services, mail: OutboxRow, failure: NotTaken) {
+  const { db, config, now } = services;
   const at = now();
   if (failure.permanent) {
-    await update(db, mail.id, {
-      set_aside_at: at,
-      leased_until: null,
-      last_error: failure.reason,
-    });
+    await update(
+      db,
+      mail,
+      { set_aside_at: at, leased_until: null, last_error: failure.reason },
+      mail.attempts,
+    );
     log.warn({ outboxId: mail.id, attempts: mail.attempts }, 'mail set aside');
     return;
   }
-  const waitMs = backoffMs(mail.attempts, Math.random());
-  await update(db, mail.id, {
-    next_attempt_at: at + waitMs,
-    leased_until: null,
-    last_error: failure.reason,
-  });
+  const waitMs = backoffMs(mail.attempts, Math.random(), config.mailRetry);
+  await update(
+    db,
+    mail,
+    { next_attempt_at: at + waitMs, leased_until: null, last_error: failure.reason },
+    mail.attempts,
+  );
   log.warn({ outboxId: mail.id, attempts: mail.attempts, waitMs }, 'mail will be tried again');
 }
 
 /** A mail that another attempt has already brought through stays sent. */
-async function update(db: Db, id: string, set: Partial<OutboxRow>): Promise<void> {
-  await db
-    .updateTable('outbox')
-    .set(set)
-    .where('id', '=', id)
-    .where('sent_at', 'is', null)
-    .execute();
+async function update(
+  db: Db,
+  { id }: OutboxRow,
+  set: Partial<OutboxRow>,
+  attempt?: number,
+): Promise<void> {
+  let query = db.updateTable('outbox').set(set).where('id', '=', id).where('sent_at', 'is', null);
+  if (attempt !== undefined) query = query.where('attempts', '=', attempt);
+  await query.execute();
 }

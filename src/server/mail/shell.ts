@@ -3,9 +3,17 @@ export interface MailContent {
   paragraphs: string[];
   /** Rows of "label: value", such as both local times. */
   facts?: [label: string, value: string][];
+  /** What somebody wrote, set apart from what we say. */
+  quote?: { by: string; words: string };
   button?: { label: string; url: string };
+  /** Further addresses, one a line, under the button. */
+  links?: { label: string; url: string }[];
+  /** Paragraphs under all that, such as cautions. */
+  closing?: string[];
   /** Small print, such as why this mail came. */
   footer: string;
+  /** Where mails of this kind are switched off. */
+  unsubscribe?: { label: string; url: string };
 }
 
 const FONT = "font-family:'Source Sans 3','Segoe UI',Helvetica,Arial,sans-serif";
@@ -15,37 +23,52 @@ export function renderMail(content: MailContent): { html: string; text: string }
   return { html: html(content), text: text(content) };
 }
 
-function text({ title, paragraphs, facts = [], button, footer }: MailContent): string {
+function text(content: MailContent): string {
+  const { title, paragraphs, facts = [], quote, button, links = [] } = content;
+  const { closing = [], footer, unsubscribe } = content;
   const width = Math.max(0, ...facts.map(([label]) => label.length));
   const rows = facts.map(([label, value]) => `${`${label}:`.padEnd(width + 2)}${value}`);
   const blocks = [
     title,
     ...paragraphs,
     ...(rows.length > 0 ? [rows.join('\n')] : []),
+    ...(quote ? [`${quote.by}:\n${quote.words.replace(/^/gm, '> ')}`] : []),
     ...(button ? [`${button.label}:\n${button.url}`] : []),
-    `-- \n${footer}`,
+    ...links.map(({ label, url }) => `${label}:\n${url}`),
+    ...closing,
+    `-- \n${footer}${unsubscribe ? `\n${unsubscribe.label}: ${unsubscribe.url}` : ''}`,
   ];
   return `${blocks.join('\n\n')}\n`;
 }
 
-function html({ title, paragraphs, facts = [], button, footer }: MailContent): string {
+function html(content: MailContent): string {
+  const { title, paragraphs, facts = [], quote, button, links = [] } = content;
+  const { closing = [], footer, unsubscribe } = content;
   const row = ([label, value]: [string, string]): string =>
     `<tr><td class="quiet" style="${FONT};font-size:15px;line-height:22px;color:#44535a;padding:2px 16px 2px 0;vertical-align:top">${escape(label)}</td>` +
     `<td class="ink" style="${FONT};font-size:15px;line-height:22px;color:#15222a;padding:2px 0;vertical-align:top">${escape(value)}</td></tr>`;
+  const paragraphHtml = (paragraph: string): string =>
+    `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#15222a;margin:0 0 14px">${escape(paragraph)}</p>`;
   const parts = [
     `<h1 class="ink" style="${FONT};font-size:21px;line-height:28px;font-weight:600;color:#15222a;margin:0 0 14px">${escape(title)}</h1>`,
-    ...paragraphs.map(
-      (paragraph) =>
-        `<p class="ink" style="${FONT};font-size:16px;line-height:24px;color:#15222a;margin:0 0 14px">${escape(paragraph)}</p>`,
-    ),
+    ...paragraphs.map(paragraphHtml),
     facts.length > 0
       ? `<table role="presentation" cellpadding="0" cellspacing="0" border="0" style="margin:0 0 18px">${facts.map(row).join('')}</table>`
+      : '',
+    quote
+      ? `<p class="quiet" style="${FONT};font-size:15px;line-height:22px;color:#44535a;margin:0 0 4px">${escape(quote.by)}</p>` +
+        `<blockquote class="ink rule" style="${FONT};font-size:16px;line-height:24px;color:#15222a;border-left:3px solid #cdd4d0;margin:0 0 18px;padding:2px 0 2px 14px">${escape(quote.words).replaceAll('\n', '<br>')}</blockquote>`
       : '',
     button
       ? `<p style="margin:0 0 10px"><a class="button" href="${escape(button.url)}" style="${FONT};display:inline-block;font-size:16px;line-height:24px;font-weight:600;color:#f6f9f9;background-color:#14566b;padding:9px 18px;border-radius:2px;text-decoration:none">${escape(button.label)}</a></p>` +
         `<p class="quiet" style="${FONT};font-size:13px;line-height:19px;color:#44535a;margin:0 0 18px;word-break:break-all">${escape(button.url)}</p>`
       : '',
-    `<p class="quiet rule" style="${FONT};font-size:13px;line-height:19px;color:#44535a;border-top:1px solid #cdd4d0;padding-top:12px;margin:6px 0 0">${escape(footer)}</p>`,
+    ...links.map(
+      ({ label, url }) =>
+        `<p style="margin:0 0 10px"><a class="link" href="${escape(url)}" style="${FONT};font-size:16px;line-height:24px;color:#14566b">${escape(label)}</a></p>`,
+    ),
+    ...closing.map(paragraphHtml),
+    `<p class="quiet rule" style="${FONT};font-size:13px;line-height:19px;color:#44535a;border-top:1px solid #cdd4d0;padding-top:12px;margin:6px 0 0">${escape(footer)}${unsubscribe ? ` <a class="quiet" href="${escape(unsubscribe.url)}" style="color:#44535a">${escape(unsubscribe.label)}</a>` : ''}</p>`,
   ];
   return `<!doctype html>
 <html lang="en-GB">
@@ -64,6 +87,7 @@ function html({ title, paragraphs, facts = [], button, footer }: MailContent): s
   .quiet { color: #a89f91 !important; }
   .rule { border-color: #35302a !important; }
   .button { color: #10191a !important; background-color: #8bb9be !important; }
+  .link { color: #8bb9be !important; }
 }
 </style>
 </head>

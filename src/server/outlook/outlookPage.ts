@@ -5,11 +5,12 @@ import {
 } from '../../domain/outlook/question';
 import { regionNamed, regionStations } from '../../domain/outlook/regions';
 import { bestWeekends, weekendsOf, type Weekend } from '../../domain/outlook/weekends';
-import { outlookDays, type OutlookDay } from '../../domain/outlook/year';
+import { outlookDays, type OutlookDay, type OutlookSearch } from '../../domain/outlook/year';
 import { bandById } from '../../domain/station/bands';
 import { DAY_MS } from '../../domain/time/interval';
 import type { WindowStation } from '../../domain/window/types';
 import type { Viewer } from '../auth/viewer';
+import { Remembered } from '../remembered';
 import type { Services } from '../services';
 import { loadSearchData } from '../windows/loadSearchData';
 
@@ -25,7 +26,7 @@ export interface OutlookEnd {
 export interface OutlookYear {
   here: OutlookEnd;
   there: OutlookEnd;
-  days: OutlookDay[];
+  days: readonly OutlookDay[];
   weekends: Weekend[];
   best: Weekend[];
 }
@@ -38,6 +39,13 @@ export interface OutlookPage {
 }
 
 const SHOWN_WEEKENDS = 12;
+
+/** Years lately asked for: about 60 kB each. All that a year depends on is its search, so none grows old. */
+const years = new Remembered<readonly OutlookDay[]>(100);
+
+function rememberedDays(search: OutlookSearch): readonly OutlookDay[] {
+  return years.of(JSON.stringify(search), () => outlookDays(search));
+}
 
 /** The year ahead between two ends, with its best weekends. */
 export async function outlookPage(
@@ -56,7 +64,7 @@ export async function outlookPage(
     problems.push(`${here.name} stands at both ends. Choose another place or a region for one.`);
     return { question, problems, year: null };
   }
-  const days = outlookDays({
+  const days = rememberedDays({
     fromMs: question.fromMs,
     days: OUTLOOK_DAYS,
     frequencyMhz: bandById(question.band).centreMhz,

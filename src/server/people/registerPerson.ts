@@ -31,9 +31,8 @@ export async function registerPerson(services: Services, given: Registration): P
     const now = services.now();
     const written = { name: given.name, time_zone: given.timeZone };
     const id = known?.id ?? newId();
-    if (known) {
-      await tx.updateTable('person').set(written).where('id', '=', id).execute();
-    } else {
+    // Somebody known already may have skeds without an account: what is typed here counts once it is confirmed.
+    if (!known) {
       await tx
         .insertInto('person')
         .values({
@@ -49,6 +48,14 @@ export async function registerPerson(services: Services, given: Registration): P
         })
         .execute();
     }
-    await sendConfirmMail(tx, services, { ...written, id, email: given.email });
+    await sendConfirmMail(
+      tx,
+      services,
+      { ...written, id, email: given.email },
+      {
+        name: given.name,
+        timeZone: given.timeZone,
+      },
+    );
   });
 }

@@ -17,6 +17,12 @@ export const TOKEN_LIFETIME_MS: Record<TokenPurpose, number> = {
 /** What a link in a mail is good for now. */
 export type TokenState = 'usable' | 'used' | 'expired' | 'unknown';
 
+/** Counts from when the address is confirmed: until then anybody may have typed it. */
+export interface TypedOnRegistering {
+  name: string;
+  timeZone: string;
+}
+
 const REFUSALS: Record<Exclude<TokenState, 'usable' | 'unknown'>, string> = {
   used: 'This link was used already. Each works once.',
   expired: 'This link is too old to work. Ask for a new one.',
@@ -28,6 +34,7 @@ export async function issueToken(
   { now }: Pick<Services, 'now'>,
   personId: string,
   purpose: TokenPurpose,
+  registration: TypedOnRegistering | null = null,
 ): Promise<{ secret: string; expiresAtMs: number }> {
   const { secret, hash } = newSecret();
   const createdAt = now();
@@ -42,9 +49,20 @@ export async function issueToken(
       created_at: createdAt,
       expires_at: expiresAtMs,
       used_at: null,
+      registration_json: registration && JSON.stringify(registration),
     })
     .execute();
   return { secret, expiresAtMs };
+}
+
+/** What was typed on registering with the secret's link; null where nothing was. */
+export async function typedWithToken(tx: Tx, secret: string): Promise<TypedOnRegistering | null> {
+  const row = await tx
+    .selectFrom('person_token')
+    .select('registration_json')
+    .where('token_hash', '=', hashSecret(secret))
+    .executeTakeFirst();
+  return row?.registration_json ? (JSON.parse(row.registration_json) as TypedOnRegistering) : null;
 }
 
 /** Looks at a secret without using it up. A secret for another purpose is unknown. */

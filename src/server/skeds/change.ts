@@ -22,6 +22,8 @@ export interface Change {
   as?: string | undefined;
   words: string;
   command: (by: string, sked: Sked) => SkedCommand;
+  /** Comes before everything else in the transaction; when it throws, nothing is changed. */
+  first?: ((tx: Tx) => Promise<void>) | undefined;
   /** Checks beyond the state machine, once it has agreed; returns warnings, throws `SlotTaken`. */
   check?: (tx: Tx, loaded: LoadedSked, next: Sked) => Promise<string[]>;
   /** Further rows to write in the same transaction. */
@@ -41,6 +43,7 @@ export async function changeSked(
   let wanted: { loaded: LoadedSked; next: Sked } | undefined;
   try {
     return await inTransaction(services.db, async (tx) => {
+      await change.first?.(tx);
       const loaded = await loadSked(tx, change.skedId);
       const mine = await stationIdsOf(tx, viewer.id);
       const own = (loaded?.sked.parties ?? [])

@@ -9,7 +9,7 @@ export async function eventsOf(
   db: Db | Tx,
   skedId: string,
   viewerId?: string,
-): Promise<SkedEventView[]> {
+): Promise<(SkedEventView & { sequence: number })[]> {
   const rows = await db
     .selectFrom('sked_event')
     .leftJoin('station', 'station.id', 'sked_event.station_id')
@@ -22,6 +22,7 @@ export async function eventsOf(
       'sked_event.end_at',
       'sked_event.words',
       'sked_event.at',
+      'sked_event.sequence',
       'station.call_sign',
       'person.name',
     ])
@@ -35,6 +36,7 @@ export async function eventsOf(
       kind: row.kind,
       callSign: row.call_sign,
       personName: row.name,
+      sequence: row.sequence,
       byViewer: viewerId !== undefined && row.person_id === viewerId,
       startMs: row.start_at,
       endMs: row.end_at,

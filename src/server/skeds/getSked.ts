@@ -1,4 +1,4 @@
-import { decide, type Sked, type SkedCommand } from '../../domain/sked/machine';
+import { decide, type AnswerKind, type Sked, type SkedCommand } from '../../domain/sked/machine';
 import { MINUTE_MS } from '../../domain/time/interval';
 import type { SkedChoices, SkedReportView, SkedView } from '../../domain/sked/view';
 import type { Viewer } from '../auth/viewer';
@@ -13,7 +13,7 @@ import { slotWarnings } from './slotCheck';
 import { summariesOf } from './summaries';
 
 /**
- * The sked as a member of a party's crew sees it, with its stations, and what to know before accepting while
+ * The sked as a member of a party's crew sees it (also of one that dropped out), with its stations, and what to know before accepting while
  * it is offered. Throws `NotFound` for everybody else.
  */
 export async function getSked(
@@ -42,14 +42,18 @@ export async function getSked(
     stations,
     judged: await judgedParties(db, stations, loaded.row.band),
     warnings:
-      summary!.state === 'offered'
+      summary!.state === 'offered' && !summary!.droppedOut
         ? await slotWarnings(db, loaded.stations, loaded.sked, skedId)
         : [],
     view: {
       ...summary!,
       events: await eventsOf(db, skedId, viewer.id),
       reports: await reportsOf(db, skedId),
-      choices: choicesFor(loaded.sked, own, nowMs),
+      choices: {
+        ...choicesFor(loaded.sked, own, nowMs),
+        // Its coordinator moves the slots of a plan.
+        ...(loaded.row.activity_id === null ? {} : { move: null }),
+      },
     },
   };
 }
@@ -59,8 +63,7 @@ function choicesFor(sked: Sked, own: readonly string[], nowMs: number): SkedChoi
   const { version } = sked;
   const first = (command: (by: string) => SkedCommand) =>
     own.find((by) => decide(sked, command(by), { nowMs }).ok) ?? null;
-  const simple = (kind: 'accept' | 'decline' | 'withdraw' | 'cancel' | 'report') =>
-    first((by) => ({ kind, by, version }));
+  const simple = (kind: AnswerKind) => first((by) => ({ kind, by, version }));
   const soonMs = Math.floor(nowMs / MINUTE_MS) * MINUTE_MS + 5 * MINUTE_MS;
   const elsewhere = {
     startMs: soonMs,
@@ -69,6 +72,7 @@ function choicesFor(sked: Sked, own: readonly string[], nowMs: number): SkedChoi
   return {
     accept: simple('accept'),
     decline: simple('decline'),
+    dropOut: simple('dropOut'),
     withdraw: simple('withdraw'),
     cancel: simple('cancel'),
     report: simple('report'),
@@ -84,6 +88,8 @@ async function reportsOf(db: Db, skedId: string): Promise<SkedReportView[]> {
       'sked_report.station_id',
       'station.call_sign',
       'sked_report.result',
+      'sked_report.report_sent',
+      'sked_report.report_received',
       'sked_report.words',
       'sked_report.at',
     ])
@@ -94,6 +100,8 @@ async function reportsOf(db: Db, skedId: string): Promise<SkedReportView[]> {
     stationId: row.station_id,
     callSign: row.call_sign,
     result: row.result,
+    reportSent: row.report_sent,
+    reportReceived: row.report_received,
     words: row.words,
     atMs: row.at,
   }));

@@ -20,7 +20,7 @@ export interface PartyStation extends SkedStation {
 export interface LoadedSked {
   row: SkedRow;
   sked: Sked;
-  /** In the order of the parties: the station that offered first comes first. */
+  /** Those still in it, in the order of the parties: the station that offered first comes first. */
   stations: PartyStation[];
 }
 
@@ -49,11 +49,11 @@ export async function loadSked(db: Db | Tx, id: string): Promise<LoadedSked | nu
     .selectFrom('sked_party')
     .innerJoin('station', 'station.id', 'sked_party.station_id')
     .selectAll('station')
-    .select('sked_party.answer')
+    .select(['sked_party.answer', 'sked_party.left_at'])
     .where('sked_party.sked_id', '=', id)
     .orderBy('sked_party.place')
     .execute();
-  const stations = parties.map(partyStation);
+  const stations = parties.filter((party) => party.left_at === null).map(partyStation);
   return {
     row,
     stations,
@@ -68,6 +68,7 @@ export async function loadSked(db: Db | Tx, id: string): Promise<LoadedSked | nu
         stationId: party.id,
         callSign: party.call_sign,
         answer: party.answer,
+        left: party.left_at !== null,
       })),
     },
   };

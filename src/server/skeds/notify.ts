@@ -1,15 +1,17 @@
-import type { Decision } from '../../domain/sked/machine';
+import type { Decision, Sked } from '../../domain/sked/machine';
+import { stillIn, type CalendarDue } from '../../domain/sked/standing';
 import type { SkedEventKind } from '../../domain/sked/types';
 import { paths } from '../../paths';
 import type { Viewer } from '../auth/viewer';
+import type { Db } from '../db/connection';
 import type { Tx } from '../db/transaction';
-import { enqueueMail } from '../mail/outbox';
-import { renderMail } from '../mail/shell';
-import { skedCalendar } from '../mail/templates/skedCalendar';
+import type { PersonalEntry } from '../mail/templates/skedCalendar';
 import { skedFacts, type SkedRecipient } from '../mail/templates/skedFacts';
 import { skedMail, type SkedMailKind } from '../mail/templates/skedMail';
 import type { Services } from '../services';
 import type { LoadedSked } from './load';
+import { guestReached } from './recipients';
+import { sendSkedMail } from './sendSkedMail';
 
 interface Made {
   /** The sked as it was before the decision (after it, for the first offer). */
@@ -20,38 +22,25 @@ interface Made {
   words: string;
 }
 
-const MAILS: Partial<Record<SkedEventKind, SkedMailKind>> = {
-  offered: 'offered',
-  moved: 'moved',
-  agreed: 'agreed',
-  declined: 'declined',
-  withdrawn: 'withdrawn',
-  lapsed: 'lapsed',
-  cancelled: 'cancelled',
-};
-
 /**
- * Puts the mails about a decision into the outbox, within the transaction that makes it. A message with a calendar
- * entry goes to every crew member of every party, the one who acted included, because it belongs into their
- * calendar too; any other goes to the crews of the other parties.
+ * Puts the mails about a decision into the outbox, within the transaction that makes it. Each carries a calendar entry,
+ * so it goes to every crew member of every party, the one who acted included. An acceptance that others have to follow
+ * changes the entries of its own crew only, and only they are written to.
  */
 export async function notifyDecision(tx: Tx, services: Services, made: Made): Promise<void> {
   const { loaded, decision, by, actor, words } = made;
-  const kind = MAILS[decision.happenings.at(-1)!.kind];
-  if (!kind) return;
   const { calendar, sked } = decision;
-  const facts = skedFacts(
-    loaded.row,
-    loaded.stations,
-    sked,
-    services.config.publicUrl + paths.sked(loaded.row.id),
-  );
+  const kind = mailKind(decision);
+  if (!kind || !calendar) return;
+  const url = skedUrl(services, loaded);
+  const stillIds = stillIn(sked.parties).map((party) => party.stationId);
+  const stations = loaded.stations.filter(({ id }) => stillIds.includes(id));
+  const facts = skedFacts(loaded.row, stations, sked, url);
   const callSignOf = (id: string) => loaded.stations.find((station) => station.id === id)!.callSign;
   const acted = by && actor ? { callSign: callSignOf(by), personName: actor.name } : null;
-  for (const recipient of await crewsOf(tx, loaded)) {
-    const own =
-      recipient.personId === actor?.id || (by !== null && recipient.stationIds.includes(by));
-    if (own && !calendar) continue;
+  const told = kind === 'accepted' && by ? [by] : loaded.stations.map(({ id }) => id);
+  for (const recipient of await crewsOf(tx, told)) {
+    const entry = personalEntry(sked, calendar, recipient.stationIds, services.now());
     const { subject, content } = skedMail(
       {
         kind,
@@ -59,52 +48,94 @@ export async function notifyDecision(tx: Tx, services: Services, made: Made): Pr
         by: acted && { ...acted, you: recipient.personId === actor?.id },
         words,
         before: loaded.sked,
-        gaveUpAgreed: kind === 'moved' && calendar !== null,
+        gaveUpAgreed: kind === 'moved' && loaded.sked.state === 'agreed',
         yourOffer: recipient.stationIds.includes(loaded.sked.offeredBy),
+        asked: entry.asked,
+        out: !recipient.stationIds.some((id) => stillIds.includes(id)),
+        state: sked.state,
+        waiting: waitingCallSigns(sked),
       },
       recipient,
       recipient.stationIds.map(callSignOf),
     );
-    await enqueueMail(tx, services, {
-      to: recipient.email,
+    await sendSkedMail(tx, services, {
+      sked: loaded.row,
+      facts,
+      recipient,
       subject,
-      ...renderMail(content),
-      ...(calendar
-        ? {
-            calendar: {
-              method: calendar.method,
-              body: skedCalendar(
-                facts,
-                recipient,
-                calendar,
-                services.config.smtp.from,
-                services.now(),
-              ),
-            },
-          }
-        : {}),
+      content,
+      entry,
     });
   }
 }
 
-/** Everybody in the crews of the parties who can be written to; each person once. */
-async function crewsOf(tx: Tx, { stations }: LoadedSked): Promise<SkedRecipient[]> {
-  const rows = await tx
+const MAILS: Record<SkedEventKind, SkedMailKind | null> = {
+  offered: 'offered',
+  moved: 'moved',
+  accepted: 'accepted',
+  agreed: 'agreed',
+  declined: 'declined',
+  droppedOut: 'droppedOut',
+  withdrawn: 'withdrawn',
+  lapsed: 'lapsed',
+  cancelled: 'cancelled',
+  reported: null,
+};
+
+/** The last thing that happened, except that somebody who left is told even when agreement follows from it. */
+function mailKind({ happenings }: Made['decision']): SkedMailKind | null {
+  const kinds = happenings.map((happening) => happening.kind);
+  return MAILS[kinds.includes('droppedOut') ? 'droppedOut' : kinds.at(-1)!];
+}
+
+function skedUrl({ config }: Services, { row }: LoadedSked): string {
+  return config.publicUrl + paths.sked(row.id);
+}
+
+function waitingCallSigns(sked: Sked): string[] {
+  return stillIn(sked.parties)
+    .filter((party) => party.answer === 'waiting')
+    .map((party) => party.callSign);
+}
+
+/** What the calendar of somebody in the crews of these stations shows: nothing where all of them have dropped out. */
+export function personalEntry(
+  sked: Pick<Sked, 'state' | 'parties'>,
+  calendar: CalendarDue,
+  stationIds: readonly string[],
+  stampMs: number,
+): PersonalEntry {
+  const own = stillIn(sked.parties).filter((party) => stationIds.includes(party.stationId));
+  return {
+    ...calendar,
+    status: own.length > 0 ? calendar.status : 'CANCELLED',
+    asked: sked.state === 'offered' && own.some((party) => party.answer === 'waiting'),
+    stampMs,
+  };
+}
+
+/**
+ * Everybody in the crews of the stations who can be written to, each person once: people with a confirmed account, and
+ * those who keep a guest station and have not asked for no more mail.
+ */
+export async function crewsOf(
+  db: Db | Tx,
+  stationIds: readonly string[],
+): Promise<SkedRecipient[]> {
+  const rows = await db
     .selectFrom('station_crew')
     .innerJoin('person', 'person.id', 'station_crew.person_id')
+    .innerJoin('station', 'station.id', 'station_crew.station_id')
     .select([
       'person.id',
       'person.email',
       'person.name',
       'person.time_zone',
+      'person.confirmed_at',
       'station_crew.station_id',
     ])
-    .where(
-      'station_crew.station_id',
-      'in',
-      stations.map((station) => station.id),
-    )
-    .where('person.confirmed_at', 'is not', null)
+    .where('station_crew.station_id', 'in', [...stationIds])
+    .where((or) => or.or([or('person.confirmed_at', 'is not', null), guestReached(or)]))
     .where('person.locked_at', 'is', null)
     .orderBy('person.email')
     .execute();
@@ -118,6 +149,7 @@ async function crewsOf(tx: Tx, { stations }: LoadedSked): Promise<SkedRecipient[
         email: row.email,
         name: row.name,
         timeZone: row.time_zone,
+        guest: row.confirmed_at === null,
         stationIds: [row.station_id],
       });
     }

@@ -5,6 +5,7 @@ import type { Viewer } from '../auth/viewer';
 import type { SkedRow } from '../db/tables';
 import { inTransaction, type Tx } from '../db/transaction';
 import { Forbidden, InvalidInput, NotFound } from '../errors';
+import { stationForGuest } from '../guests/guestStation';
 import { newId } from '../ids';
 import type { Services } from '../services';
 import { withAlternatives } from './alternatives';
@@ -36,7 +37,8 @@ export async function offerSked(
   let stations: PartyStation[] = [];
   try {
     return await inTransaction(services.db, async (tx) => {
-      stations = await stationsFor(tx, viewer, [input.station, ...input.with]);
+      const parties = await partiesOf(tx, services, viewer, input);
+      stations = parties.stations;
       const nowMs = services.now();
       const decision = decideOffer(
         {
@@ -49,9 +51,11 @@ export async function offerSked(
       if (!decision.ok) throw refusalError(decision.refusal);
       requireMoon(stations, slot);
       const id = newId();
+      // Nothing is told of a partner without an account that the offerer did not enter.
+      const known = stations.filter((station) => !parties.guestIds.has(station.id));
       const warnings = [
-        ...(await slotWarnings(tx, stations, slot, id)),
-        ...(await equipmentWarnings(tx, stations, input.band)),
+        ...(await slotWarnings(tx, known, slot, id)),
+        ...(await equipmentWarnings(tx, known, input.band)),
       ];
       const row = await insertSked(tx, services, id, decision.sked, {
         band: input.band,
@@ -84,6 +88,47 @@ function frequencyIn(input: z.output<typeof skedOfferSchema>): number {
     throw new InvalidInput(message, [{ path: 'frequencyMhz', message }]);
   }
   return frequencyMhz;
+}
+
+interface Parties {
+  stations: PartyStation[];
+  /** Which of them were described with the offer. */
+  guestIds: Set<string>;
+}
+
+/** The stations in the order given: registered ones, and people without an account as they are described. */
+async function partiesOf(
+  tx: Tx,
+  services: Services,
+  viewer: Viewer,
+  input: z.output<typeof skedOfferSchema>,
+): Promise<Parties> {
+  const partners = input.with;
+  const ids = partners.filter((partner) => typeof partner === 'string');
+  const registered = await stationsFor(tx, viewer, [input.station, ...ids]);
+  const stations = [registered[0]!];
+  const guestIds = new Set<string>();
+  for (const [index, partner] of partners.entries()) {
+    if (typeof partner === 'string') {
+      stations.push(registered.find((station) => station.id === partner)!);
+      continue;
+    }
+    if (stations.some((station) => station.callSign === partner.callSign)) {
+      const message = `${partner.callSign} takes part already. Each station counts once.`;
+      throw new InvalidInput(message, [{ path: `with.${index}.callSign`, message }]);
+    }
+    const station = await stationForGuest(
+      tx,
+      services,
+      viewer,
+      partner,
+      input.band,
+      `with.${index}`,
+    );
+    stations.push(station);
+    guestIds.add(station.id);
+  }
+  return { stations, guestIds };
 }
 
 /** The stations in the order given; the first must be the viewer's, the others listed or the viewer's too. */

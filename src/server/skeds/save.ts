@@ -1,5 +1,6 @@
 import type { Decision } from '../../domain/sked/machine';
-import { holdsBooking } from '../../domain/sked/machine';
+import { holdsBooking, stillIn } from '../../domain/sked/standing';
+import type { SkedPartyRow } from '../db/tables';
 import type { Tx } from '../db/transaction';
 import { newId } from '../ids';
 import { SlotTaken } from './refusals';
@@ -27,19 +28,42 @@ export async function saveDecision(
       start_at: sked.startMs,
       end_at: sked.endMs,
       updated_at: by.atMs,
+      ...agreedVersion(decision),
     })
     .where('id', '=', skedId)
     .execute();
-  for (const party of sked.parties) {
-    await tx
-      .updateTable('sked_party')
-      .set({ answer: party.answer })
-      .where('sked_id', '=', skedId)
-      .where('station_id', '=', party.stationId)
-      .execute();
+  for (const party of stillIn(sked.parties)) {
+    await setParty(tx, skedId, party.stationId, { answer: party.answer });
+  }
+  for (const happening of decision.happenings) {
+    if (happening.kind === 'droppedOut' && happening.by) {
+      await setParty(tx, skedId, happening.by, { left_at: by.atMs });
+    }
   }
   await saveHappenings(tx, skedId, decision, by);
   await saveBookings(tx, skedId, decision);
+}
+
+/** Set when the slot becomes agreed, kept while it stands (a party that drops out changes nothing for the rest). */
+function agreedVersion({ sked, happenings }: Taken): { agreed_version?: number | null } {
+  if (happenings.some((happening) => happening.kind === 'agreed')) {
+    return { agreed_version: sked.version };
+  }
+  return holdsBooking(sked) ? {} : { agreed_version: null };
+}
+
+async function setParty(
+  tx: Tx,
+  skedId: string,
+  stationId: string,
+  set: Partial<Pick<SkedPartyRow, 'answer' | 'left_at'>>,
+): Promise<void> {
+  await tx
+    .updateTable('sked_party')
+    .set(set)
+    .where('sked_id', '=', skedId)
+    .where('station_id', '=', stationId)
+    .execute();
 }
 
 /** The history: one row for each thing that happened. The words belong to the first. */
@@ -63,6 +87,7 @@ export async function saveHappenings(
         end_at: event.endMs,
         words: index === 0 ? by.words : '',
         at: by.atMs,
+        sequence: sked.sequence,
       })),
     )
     .execute();
@@ -72,7 +97,7 @@ async function saveBookings(tx: Tx, skedId: string, { sked }: Taken): Promise<vo
   if (sked.state === 'reported') return;
   await tx.deleteFrom('booking').where('sked_id', '=', skedId).execute();
   if (!holdsBooking(sked)) return;
-  for (const party of sked.parties) {
+  for (const party of stillIn(sked.parties)) {
     try {
       await tx
         .insertInto('booking')

@@ -2,7 +2,11 @@ import { z } from 'zod';
 import { BAND_IDS } from '../../domain/station/bands';
 import { MODE_IDS } from '../../domain/station/modes';
 import { clockOfDay } from '../../domain/sked/moveChoice';
+import { LONGEST_REPORT } from '../../domain/sked/result';
+import { plainWords } from '../../domain/sked/talk';
 import { MINUTE_MS } from '../../domain/time/interval';
+import type { Tx } from '../db/transaction';
+import { guestSchema, type Guest } from '../guests/guestSchema';
 
 /** What people may add to an offer or an answer. */
 export const wordsSchema = z
@@ -29,7 +33,12 @@ export const skedAnswerSchema = z.object({
   as: stationIdSchema.optional(),
   words: wordsSchema,
 });
-export type SkedAnswer = z.output<typeof skedAnswerSchema>;
+export type SkedAnswer = z.output<typeof skedAnswerSchema> & WithLink;
+
+/** What comes first in the transaction of a change made behind a link: using the link up. */
+export interface WithLink {
+  first?: ((tx: Tx) => Promise<void>) | undefined;
+}
 
 export const skedMoveSchema = skedAnswerSchema.extend({ start: instant, end: instant });
 
@@ -61,14 +70,36 @@ export const skedMoveFormSchema = skedAnswerSchema
     return { ...answer, start: startMs, end: startMs + length * MINUTE_MS };
   });
 
+const signalReport = z
+  .string('The report must be text, such as −21 or 529.')
+  .transform((text) => plainWords(text).replace(/\s+/g, ' '))
+  .refine(
+    (text) => [...text].length <= LONGEST_REPORT,
+    `Keep the report to ${LONGEST_REPORT} characters.`,
+  )
+  .default('');
+
 export const skedReportSchema = skedAnswerSchema.extend({
-  result: z.enum(['completed', 'partly', 'notHeard'], 'Say completed, partly or notHeard.'),
+  result: z.enum(['completed', 'partly', 'notHeard'], 'Say completed, partly or not heard.'),
+  reportSent: signalReport,
+  reportReceived: signalReport,
+});
+
+/** A registered station by its id, or somebody without an account. Problems are told of the one that was meant. */
+const partnerSchema = z.unknown().transform((given, context): string | Guest => {
+  const meant = typeof given === 'object' && given !== null ? guestSchema : stationIdSchema;
+  const parsed = meant.safeParse(given);
+  if (parsed.success) return parsed.data;
+  for (const { path, message } of parsed.error.issues) {
+    context.addIssue({ code: 'custom', path, message });
+  }
+  return z.NEVER;
 });
 
 export const skedOfferSchema = z.object({
   station: stationIdSchema,
   with: z
-    .array(stationIdSchema, 'Name at least one partner station.')
+    .array(partnerSchema, 'Name at least one partner station.')
     .min(1, 'Name at least one partner station.')
     .max(15, 'A sked takes at most 16 stations.'),
   band: z.enum(BAND_IDS, 'Choose one of the bands.'),

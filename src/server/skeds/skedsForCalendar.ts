@@ -20,7 +20,8 @@ export async function skedsForCalendar(
       parties
         .selectFrom('sked_party')
         .select('sked_id')
-        .where('station_id', 'in', [...mine]),
+        .where('station_id', 'in', [...mine])
+        .where('left_at', 'is', null),
     )
     .where('state', 'in', ['offered', 'agreed', 'reported'])
     .where('start_at', '<', span.endMs)

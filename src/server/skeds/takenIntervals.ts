@@ -10,7 +10,7 @@ export async function takenIntervals(
   db: Db | Tx,
   stationIds: readonly string[],
   span: Interval,
-  exceptSkedId?: string,
+  except: string | ReadonlySet<string> = new Set(),
 ): Promise<Interval[]> {
   if (stationIds.length === 0) return [];
   let query = db
@@ -19,7 +19,8 @@ export async function takenIntervals(
     .where('station_id', 'in', [...stationIds])
     .where('start_at', '<', span.endMs)
     .where('end_at', '>', span.startMs);
-  if (exceptSkedId) query = query.where('sked_id', '<>', exceptSkedId);
+  const left = typeof except === 'string' ? [except] : [...except];
+  if (left.length > 0) query = query.where('sked_id', 'not in', left);
   const rows = await query.execute();
   return unionIntervals(rows.map((row) => ({ startMs: row.start_at, endMs: row.end_at })));
 }

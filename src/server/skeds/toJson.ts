@@ -1,4 +1,5 @@
 import type { SkedSummary, SkedView } from '../../domain/sked/view';
+import type { TalkMessage } from '../../domain/sked/talk';
 import type { Interval } from '../../domain/time/interval';
 
 /** What the API answers about a sked: instants as ISO 8601 in UTC. */
@@ -18,6 +19,10 @@ export function skedToJson({ events, reports, ...sked }: SkedView) {
     })),
     reports: reports.map(({ atMs, ...report }) => ({ ...report, at: iso(atMs) })),
   };
+}
+
+export function messageToJson({ atMs, ...message }: TalkMessage) {
+  return { ...message, at: iso(atMs) };
 }
 
 function slotToJson({ startMs, endMs }: Interval) {

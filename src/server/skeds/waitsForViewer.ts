@@ -2,6 +2,7 @@ import type { SkedSummary } from '../../domain/sked/view';
 import type { Interval } from '../../domain/time/interval';
 import type { Viewer } from '../auth/viewer';
 import type { Db } from '../db/connection';
+import type { Tx } from '../db/transaction';
 import type { Services } from '../services';
 import { stationIdsOf } from './load';
 import { summariesOf } from './summaries';
@@ -23,7 +24,10 @@ export interface Waiting {
 }
 
 /** What waits for the viewer. */
-export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Promise<Waiting> {
+export async function waitsForViewer(
+  { db, now }: Pick<Services, 'now'> & { db: Db | Tx },
+  viewer: Pick<Viewer, 'id'>,
+): Promise<Waiting> {
   const mine = await stationIdsOf(db, viewer.id);
   if (mine.size === 0) return { offers: [], reports: [] };
   const nowMs = now();
@@ -38,6 +42,7 @@ export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Pro
         .selectFrom('sked_party')
         .select('sked_id')
         .where('station_id', 'in', own)
+        .where('left_at', 'is', null)
         .where('answer', '=', 'waiting'),
     )
     .orderBy('start_at')
@@ -57,6 +62,7 @@ export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Pro
         )
         .select('sked_party.sked_id')
         .where('sked_party.station_id', 'in', own)
+        .where('sked_party.left_at', 'is', null)
         .where('sked_report.station_id', 'is', null),
     )
     .orderBy('start_at', 'desc')
@@ -70,7 +76,7 @@ export async function waitsForViewer({ db, now }: Services, viewer: Viewer): Pro
   };
 }
 
-async function withOrigin(db: Db, sked: SkedSummary): Promise<WaitingOffer> {
+async function withOrigin(db: Db | Tx, sked: SkedSummary): Promise<WaitingOffer> {
   const [last, before] = await db
     .selectFrom('sked_event')
     .select(['kind', 'station_id', 'start_at', 'end_at'])
@@ -100,6 +106,7 @@ export async function countWaiting({ db, now }: Services, viewer: Viewer): Promi
     .where('station_crew.person_id', '=', viewer.id)
     .where('sked.state', '=', 'offered')
     .where('sked.start_at', '>', now())
+    .where('sked_party.left_at', 'is', null)
     .where('sked_party.answer', '=', 'waiting')
     .executeTakeFirst();
   return row?.waiting ?? 0;

@@ -5,6 +5,7 @@ import { inTransaction, type Tx } from '../db/transaction';
 import { Conflict, NotFound } from '../errors';
 import { hashSecret } from '../ids';
 import type { Services } from '../services';
+import { giveEntries } from '../skeds/crewEntries';
 import { crewRoleOf } from './access';
 
 export interface InvitationView {
@@ -48,6 +49,7 @@ export async function joinCrew(
           added_at: now,
         })
         .execute();
+      await giveEntries(tx, services, view.stationId, viewer.id);
     } else if (present === 'operator' && view.crewRole === 'keeper') {
       await tx
         .updateTable('station_crew')

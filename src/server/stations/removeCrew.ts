@@ -2,12 +2,13 @@ import type { Viewer } from '../auth/viewer';
 import { inTransaction } from '../db/transaction';
 import { Forbidden, NotFound } from '../errors';
 import type { Services } from '../services';
+import { withdrawEntries } from '../skeds/crewEntries';
 import { crewRoleOf, requireCrew } from './access';
 import { requireAnotherKeeper } from './lastKeeper';
 
 /**
  * Takes a person out of the crew: keepers anybody, everybody themselves. Throws `NotFound`, `Forbidden`, or
- * `Conflict` for the last keeper.
+ * `Conflict` for the last keeper. The station's skeds vanish from the person's calendar.
  */
 export async function removeCrew(
   services: Services,
@@ -30,5 +31,6 @@ export async function removeCrew(
       .where('station_id', '=', stationId)
       .where('person_id', '=', personId)
       .execute();
+    await withdrawEntries(tx, services, stationId, personId);
   });
 }

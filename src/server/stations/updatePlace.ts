@@ -11,9 +11,12 @@ export async function updatePlace(
   stationId: string,
   input: PlaceUpdate,
 ): Promise<Saved> {
-  return changeStation(services, viewer, stationId, input.version, async (tx) => {
-    await requireFreeCallSign(tx, input.callSign, stationId);
+  return changeStation(services, viewer, stationId, input.version, async (tx, station) => {
+    // A station that others described may stand beside the registered one of its call sign.
+    const described = station.guest === 1 && input.callSign === station.call_sign;
+    if (!described) await requireFreeCallSign(tx, input.callSign, stationId);
     return {
+      guest: described ? 1 : 0,
       call_sign: input.callSign,
       name: input.name,
       latitude_deg: input.latitudeDeg,

@@ -1,7 +1,11 @@
+import { guestHours, guestSetup, guestSky, guestZone } from '../../domain/guest/guest';
+import { isGuestToken, readGuestToken } from '../../domain/guest/token';
 import { isLocator, locatorToPosition, normalizeLocator } from '../../domain/locator/locator';
+import { BANDS } from '../../domain/station/bands';
 import { coarseSky } from '../../domain/station/coarseSky';
 import { isTimeZone } from '../../domain/time/format';
 import type { Interval } from '../../domain/time/interval';
+import { expandUsableHours } from '../../domain/time/weeklyHours';
 import type { QuestionProblem } from '../../domain/window/question';
 import type { ChosenStation, SearchData } from '../../domain/window/searchData';
 import type { Viewer } from '../auth/viewer';
@@ -17,7 +21,8 @@ export interface LoadedSearchData extends SearchData {
 }
 
 /**
- * What a question's stations are: listed ones by id or call sign, bare places by locator. What cannot be found is
+ * What a question's stations are: listed ones by id or call sign, bare places by locator, people without an account as
+ * described in the question itself. What cannot be found is
  * left out and told in `problems`. Positions are as the viewer may know them, and the sky of others is coarse for
  * visitors, because all of it goes to the browser. Equipment is that of the public page of each station.
  */
@@ -34,7 +39,9 @@ export async function loadSearchData(
     const id = ids.get(token);
     const station =
       id === undefined
-        ? placeStation(token)
+        ? isGuestToken(token)
+          ? guestStation(token, span)
+          : placeStation(token)
         : await listedStation(services, viewer, token, id, span);
     if (typeof station === 'string') problems.push({ field: 'station', sentence: station });
     else if (stations.some((known) => known.callSign === station.callSign)) {
@@ -78,6 +85,8 @@ async function stationIds(
         ),
       ]),
     )
+    // A station that owns its call sign comes before one that others described with the same.
+    .orderBy('guest')
     .execute();
   const known = new Map<string, string>();
   for (const token of tokens) {
@@ -117,6 +126,29 @@ async function listedStation(
     if (error instanceof NotFound) return error.message;
     throw error;
   }
+}
+
+/** Somebody without an account, or a sentence why not. */
+function guestStation(token: string, span: Interval): ChosenStation | string {
+  const place = readGuestToken(token);
+  if (typeof place === 'string') return place;
+  const { latitudeDeg, longitudeDeg } = locatorToPosition(place.locator);
+  const timeZone = guestZone(place);
+  const { dish } = place;
+  return {
+    token,
+    id: null,
+    callSign: place.callSign,
+    site: { latitudeDeg, longitudeDeg, heightM: 0 },
+    sky: guestSky(place),
+    usable: expandUsableHours({ ...guestHours(place.hours), timeZone }, span),
+    placeName: null,
+    locator: place.locator,
+    timeZone,
+    equipment: dish ? BANDS.map(({ id }) => ({ band: id, setup: guestSetup(id, dish) })) : [],
+    own: false,
+    guest: place,
+  };
 }
 
 /** A bare place from "JO97ee" or "JO97ee@Europe/Stockholm", or a sentence why not. */

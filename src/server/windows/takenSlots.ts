@@ -41,6 +41,7 @@ export async function takenSlots(
         .select('sked_party.sked_id')
         .where('sked_party.station_id', 'in', [...callSigns.keys()]),
     )
+    .where('sked_party.left_at', 'is', null)
     .where('sked.state', 'in', ['agreed', 'offered'])
     .where('sked.start_at', '<', span.endMs)
     .where('sked.end_at', '>', span.startMs)

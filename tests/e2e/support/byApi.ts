@@ -35,12 +35,16 @@ export async function offerSked(
   server: RunningServer,
   from: PlainStation,
   to: PlainStation,
+  more: PlainStation[] = [],
 ): Promise<string> {
   const hourMs = 3_600_000;
   const nowMs = Date.now();
   const found = await page.request.post(`${server.url}/api/v1/windows`, {
     data: {
-      stations: [from, to].map(({ callSign, locator }) => ({ callSign, site: { locator } })),
+      stations: [from, to, ...more].map(({ callSign, locator }) => ({
+        callSign,
+        site: { locator },
+      })),
       from: new Date(nowMs + hourMs).toISOString(),
       to: new Date(nowMs + 20 * 24 * hourMs).toISOString(),
       minimumMinutes: 120,
@@ -54,7 +58,7 @@ export async function offerSked(
     headers: { origin: server.url },
     data: {
       station: from.id,
-      with: [to.id],
+      with: [to, ...more].map(({ id }) => id),
       band: '1296',
       mode: 'q65-60c',
       start: new Date(middleMs).toISOString(),

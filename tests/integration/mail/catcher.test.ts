@@ -1,7 +1,9 @@
 import ICAL from 'ical.js';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { deliverDue } from '~/server/mail/deliver';
+import { switchableMail } from '~/server/mail/switchable';
 import { smtpTransport } from '~/server/mail/transport';
+import { readUnsubscribeToken } from '~/server/mail/unsubscribe';
 import { startChild } from '../platform/children';
 import { freePorts } from '../platform/freePorts';
 import { openGround, type Ground } from '../platform/ground';
@@ -94,6 +96,46 @@ describe('a mail through a real SMTP server', () => {
         'Sked QA1LUN – QB7TID',
       ]);
     }
+  });
+});
+
+describe('a mail that can be switched off', () => {
+  it('arrives with both headers of one-press unsubscribing and a link in its text', async () => {
+    const to = { personId: 'person-ylva', email: 'ylva@qa1lun.example' };
+    const content = { title: 'Reminder', paragraphs: [], footer: 'Why.' };
+    const letter = switchableMail(ground.config, to, 'reminder', {
+      subject: 'A reminder',
+      content,
+    });
+    await ground.db
+      .insertInto('person')
+      .values({
+        id: to.personId,
+        email: to.email,
+        name: 'Ylva',
+        password_hash: null,
+        role: 'operator',
+        time_zone: 'UTC',
+        confirmed_at: 0,
+        locked_at: null,
+        sessions_valid_from: 0,
+        created_at: 0,
+      })
+      .execute();
+    await post(ground, { ...letter, calendar: undefined, topic: 'sked' } as never);
+    await deliverDue(ground, { send: smtpTransport(ground.config), leaseMs: 60_000, atOnce: 9 });
+    const mail = (await caught()).find(({ subject }) => subject === 'A reminder')!;
+    const source = await (await fetch(`${api}/api/email/${mail.id}/source`)).text();
+    const unfolded = source.replace(/\r?\n[ \t]+/g, ' ');
+    expect(unfolded).toContain(`List-Unsubscribe: <${letter.unsubscribeUrl}>`);
+    expect(unfolded).toContain('List-Unsubscribe-Post: List-Unsubscribe=One-Click');
+    expect(mail.text).toContain(letter.unsubscribeUrl);
+    expect(mail.html).toContain(letter.unsubscribeUrl);
+    const token = letter.unsubscribeUrl!.split('/').at(-1)!;
+    expect(readUnsubscribeToken(ground.config, token)).toEqual({
+      personId: to.personId,
+      topic: 'reminder',
+    });
   });
 });
 

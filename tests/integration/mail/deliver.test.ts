@@ -131,8 +131,9 @@ describe('deliverDue', () => {
 
 describe('backoffMs', () => {
   it('doubles from 15 s up to one hour, less a random part of at most a half', () => {
-    const longest = [1, 2, 3, 9, 50].map((attempts) => backoffMs(attempts, 0.999_999_9));
+    const usual = { firstMs: 15_000, longestMs: 3_600_000 };
+    const longest = [1, 2, 3, 9, 50].map((attempts) => backoffMs(attempts, 0.999_999_9, usual));
     expect(longest).toEqual([15_000, 30_000, 60_000, 3_600_000, 3_600_000]);
-    expect([1, 9].map((attempts) => backoffMs(attempts, 0))).toEqual([7500, 1_800_000]);
+    expect([1, 9].map((attempts) => backoffMs(attempts, 0, usual))).toEqual([7500, 1_800_000]);
   });
 });

@@ -28,6 +28,16 @@ describe('the year ahead', () => {
     expect(after).toBeLessThan(0.8 * before);
   });
 
+  it('is computed once for the same two skies, and anew when one changes', async () => {
+    const query = 'here=QA1LUN&there=QB7TID&band=432';
+    const days = async () => (await page(query)).year!.days;
+    const first = await days();
+    expect(await days()).toBe(first);
+    expect((await page('here=QA1LUN&there=QB7TID&band=1296')).year!.days).not.toBe(first);
+    await setSky(world.services, world.stationIds['QA1LUN']!, { elevationFromDeg: 30 });
+    expect(await days()).not.toBe(first);
+  });
+
   it('takes a region at one end and a place at the other', async () => {
     const { year } = await page('here=oceania&there=jo97ee');
     expect(year!.here).toMatchObject({ name: 'Oceania', token: null });

@@ -92,6 +92,7 @@ describe('the configuration', () => {
       port: 4321,
       smtp: { port: 587, tls: 'starttls' },
       mailLeaseMs: 60_000,
+      mailRetry: { firstMs: 15_000, longestMs: 3_600_000 },
       trustProxy: false,
       demo: false,
     });

@@ -10,6 +10,7 @@ beforeEach(async () => {
 });
 afterEach(() => ground.end());
 
+const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms));
 const put = (name: string) => ({ name, value: '0' });
 const names = async () =>
   (await ground.db.selectFrom('installation').select('name').execute()).map(({ name }) => name);
@@ -42,7 +43,7 @@ describe('inTransaction', () => {
       inTransaction(ground.db, async (tx) => {
         order.push(`${name} begins`);
         await tx.insertInto('installation').values(put(name)).execute();
-        await new Promise((resolve) => setTimeout(resolve, 20));
+        await pause(20);
         order.push(`${name} ends`);
       });
     await Promise.all([one('a'), one('b')]);
@@ -58,6 +59,23 @@ describe('inTransaction', () => {
     });
     other.exec('BEGIN IMMEDIATE; ROLLBACK');
     other.close();
+  });
+
+  it('waits for the write lock of another without stopping its own process', async () => {
+    const other = openSqlite(ground.config.databaseFile);
+    other.exec('BEGIN IMMEDIATE');
+    let turns = 0;
+    const turning = setInterval(() => (turns += 1), 5);
+    setTimeout(() => {
+      other.exec('COMMIT');
+      other.close();
+    }, 200);
+    await inTransaction(ground.db, (tx) =>
+      tx.insertInto('installation').values(put('late')).execute(),
+    );
+    clearInterval(turning);
+    expect(await names()).toEqual(['late']);
+    expect(turns).toBeGreaterThan(5);
   });
 
   it('loses no update of two processes that read first and write later', async () => {

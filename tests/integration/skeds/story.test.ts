@@ -1,20 +1,27 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
-import ICAL from 'ical.js';
 import type { OutboxRow } from '~/server/db/tables';
 import { Conflict, Forbidden, InvalidInput, NotFound } from '~/server/errors';
 import { acceptSked } from '~/server/skeds/acceptSked';
 import { cancelSked } from '~/server/skeds/cancelSked';
 import { declineSked } from '~/server/skeds/declineSked';
+import { dropOutSked } from '~/server/skeds/dropOutSked';
 import { getSked } from '~/server/skeds/getSked';
 import { lapseDueSkeds } from '~/server/skeds/lapseDueSkeds';
 import { listSkeds, skedFilterSchema } from '~/server/skeds/listSkeds';
+import { loadSked } from '~/server/skeds/load';
 import { moveSked } from '~/server/skeds/moveSked';
 import { reportSked } from '~/server/skeds/reportSked';
 import { skedsForCalendar } from '~/server/skeds/skedsForCalendar';
 import { takenIntervals } from '~/server/skeds/takenIntervals';
 import { countWaiting, waitsForViewer } from '~/server/skeds/waitsForViewer';
 import { withdrawSked } from '~/server/skeds/withdrawSked';
+import { newId, newSecret } from '~/server/ids';
+import { joinCrew as takeInvitation } from '~/server/stations/joinCrew';
+import { removeCrew } from '~/server/stations/removeCrew';
+import { homeOf } from '~/server/home/homeOf';
+import { historyOf, situation } from '~/domain/sked/told';
 import { MINUTE_MS, type Interval } from '~/domain/time/interval';
+import { calendarsAfter, readEntry } from './calendarProgram';
 import {
   addPerson,
   commonWindows,
@@ -53,18 +60,7 @@ async function newMails(before: OutboxRow[]): Promise<OutboxRow[]> {
   const known = new Set(before.map((mail) => mail.id));
   return (await world.mails()).filter((mail) => !known.has(mail.id));
 }
-function entry(mail: OutboxRow) {
-  const calendar = new ICAL.Component(ICAL.parse(mail.calendar_body!) as unknown[]);
-  const event = new ICAL.Event(calendar.getFirstSubcomponent('vevent')!);
-  return {
-    method: calendar.getFirstPropertyValue('method'),
-    uid: event.uid,
-    sequence: event.sequence,
-    startMs: event.startDate.toJSDate().getTime(),
-    endMs: event.endDate.toJSDate().getTime(),
-    status: event.component.getFirstPropertyValue('status'),
-  };
-}
+const entry = (mail: OutboxRow) => readEntry(mail.calendar_body!);
 async function caught(promise: Promise<unknown>): Promise<unknown> {
   return promise.then(
     () => {
@@ -79,21 +75,41 @@ describe('offer, move, accept, cancel', () => {
     const first = slotIn(window, 10);
     const { id } = await offerFrom(world, A, [B], first, 'Clear sky forecast.');
     let mails = await world.mails();
-    expect(mails.map((mail) => mail.recipient)).toEqual([as(B).email]);
+    expect(mails.map((mail) => mail.recipient)).toEqual([as(B).email, as(A).email]);
+    expect(mails[1]!.subject).toMatch(/^You offer a sked/);
     expect(mails[0]!.subject).toMatch(/^QA1LUN offers a sked, \w{3} \d+ Jan .* UTC, 1296 MHz$/);
     expect(mails[0]!.text_body).toContain('Clear sky forecast.');
     expect(mails[0]!.text_body).toMatch(/Your time: .*EST/);
-    expect(mails[0]!.calendar_body).toBeNull();
+    expect(entry(mails[0]!)).toMatchObject({
+      method: 'REQUEST',
+      sequence: 0,
+      status: 'TENTATIVE',
+      partstat: 'NEEDS-ACTION',
+      rsvp: 'TRUE',
+      transparent: true,
+      ...first,
+    });
+    expect(entry(mails[1]!)).toMatchObject({ partstat: 'ACCEPTED', rsvp: 'FALSE' });
     expect(await countWaiting(world.services, as(B))).toBe(1);
     expect(await countWaiting(world.services, as(A))).toBe(0);
 
     const second = slotIn(window, 25);
     const moved = await move(B, id, 1, second, 'A quarter of an hour later.');
     let fresh = await newMails(mails);
-    expect(fresh.map((mail) => mail.recipient)).toEqual([as(A).email]);
-    expect(fresh[0]!.subject).toContain('QB7TID moved your offer');
-    expect(fresh[0]!.text_body).toContain('15 min later than before');
-    expect(fresh[0]!.text_body).not.toContain('given up');
+    expect(fresh.map((mail) => mail.subject.split(',')[0])).toEqual([
+      'You moved the sked',
+      'QB7TID moved your offer',
+    ]);
+    const toA = fresh.find((mail) => mail.recipient === as(A).email)!;
+    expect(toA.text_body).toContain('15 min later than before');
+    expect(toA.text_body).not.toContain('given up');
+    expect(entry(toA)).toMatchObject({
+      method: 'REQUEST',
+      sequence: 1,
+      status: 'TENTATIVE',
+      partstat: 'NEEDS-ACTION',
+      ...second,
+    });
 
     mails = await world.mails();
     const agreed = await accept(A, id, moved.version);
@@ -106,12 +122,15 @@ describe('offer, move, accept, cancel', () => {
       .executeTakeFirstOrThrow();
     for (const mail of fresh) {
       expect(mail.calendar_method).toBe('REQUEST');
-      expect(entry(mail)).toEqual({
+      expect(entry(mail)).toMatchObject({
         method: 'REQUEST',
         uid: row.uid,
-        sequence: 0,
+        sequence: 2,
         ...second,
         status: 'CONFIRMED',
+        partstat: 'ACCEPTED',
+        rsvp: 'FALSE',
+        transparent: false,
       });
     }
     expect(await takenIntervals(world.services.db, [world.stationIds[B]!], window)).toEqual([
@@ -126,7 +145,7 @@ describe('offer, move, accept, cancel', () => {
     fresh = await newMails(mails);
     expect(fresh).toHaveLength(2);
     for (const mail of fresh) {
-      expect(entry(mail)).toMatchObject({ method: 'CANCEL', uid: row.uid, sequence: 1 });
+      expect(entry(mail)).toMatchObject({ method: 'CANCEL', uid: row.uid, sequence: 3 });
       expect(entry(mail).status).toBe('CANCELLED');
       expect(mail.text_body).toContain('Wind 18 m/s');
     }
@@ -142,7 +161,7 @@ describe('offer, move, accept, cancel', () => {
     ]);
   });
 
-  it('gives an agreed slot up when it is moved: CANCEL, freed booking, then a higher REQUEST', async () => {
+  it('gives an agreed slot up when it is moved: freed booking, tentative entry, then a firm one', async () => {
     const first = slotIn(window, 10);
     const second = slotIn(window, 60);
     const { id } = await offerFrom(world, A, [B], first);
@@ -152,7 +171,12 @@ describe('offer, move, accept, cancel', () => {
     let fresh = await newMails(mails);
     expect(fresh).toHaveLength(2);
     for (const mail of fresh) {
-      expect(entry(mail)).toMatchObject({ method: 'CANCEL', sequence: 1, ...first });
+      expect(entry(mail)).toMatchObject({
+        method: 'REQUEST',
+        status: 'TENTATIVE',
+        sequence: 2,
+        ...second,
+      });
       expect(mail.text_body).toContain('is given up');
     }
     expect(fresh.map((mail) => mail.subject.split(',')[0]).sort()).toEqual([
@@ -164,7 +188,7 @@ describe('offer, move, accept, cancel', () => {
     await accept(B, id, moved.version);
     fresh = await newMails(mails);
     for (const mail of fresh) {
-      expect(entry(mail)).toMatchObject({ method: 'REQUEST', sequence: 2, ...second });
+      expect(entry(mail)).toMatchObject({ status: 'CONFIRMED', sequence: 3, ...second });
     }
   });
 
@@ -181,7 +205,9 @@ describe('offer, move, accept, cancel', () => {
       .execute();
     const { id } = await offerFrom(world, A, [B], slotIn(window, 10));
     await accept(B, id, 1);
-    const requests = (await world.mails()).filter((mail) => mail.calendar_method === 'REQUEST');
+    const requests = (await world.mails()).filter(
+      (mail) => mail.calendar_method === 'REQUEST' && entry(mail).status === 'CONFIRMED',
+    );
     expect(requests.map((mail) => mail.recipient).sort()).toEqual(
       [as(A).email, as(B).email, both.email].sort(),
     );
@@ -199,8 +225,160 @@ describe('offer, move, accept, cancel', () => {
     expect((await getSked(world.services, as(A), id)).view.state).toBe('offered');
     await accept(B, id, half.version);
     expect((await getSked(world.services, as(A), id)).view.state).toBe('agreed');
-    const requests = (await world.mails()).filter((mail) => mail.calendar_method === 'REQUEST');
-    expect(requests).toHaveLength(3);
+    const mails = await world.mails();
+    // Three for the offer, one for the first answer, three for the agreement.
+    expect(mails.map((mail) => entry(mail).status).sort()).toEqual([
+      ...['CONFIRMED', 'CONFIRMED', 'CONFIRMED'],
+      ...['TENTATIVE', 'TENTATIVE', 'TENTATIVE', 'TENTATIVE'],
+    ]);
+  });
+
+  it('tells the first of three to accept who is still awaited, and only that crew', async () => {
+    const { id } = await offerFrom(world, A, [B, C], slotIn(window, 10));
+    const mails = await world.mails();
+    await accept(C, id, 1);
+    const fresh = await newMails(mails);
+    expect(fresh.map((mail) => mail.recipient)).toEqual([as(C).email]);
+    expect(fresh[0]!.text_body).toContain('QB7TID has not answered yet');
+    expect(entry(fresh[0]!)).toMatchObject({ status: 'TENTATIVE', partstat: 'ACCEPTED' });
+    const { view } = await getSked(world.services, as(B), id);
+    expect(view.parties.map((party) => [party.callSign, party.answer])).toEqual([
+      [B, 'waiting'],
+      [A, 'accepted'],
+      [C, 'accepted'],
+    ]);
+  });
+});
+
+describe('dropping out', () => {
+  const drop = (who: string, id: string, version: number, words = '') =>
+    dropOutSked(world.services, as(who), id, { version, words });
+
+  it('frees the one who leaves, keeps the slot for the rest, and tells everybody', async () => {
+    const slot = slotIn(window, 10);
+    const { id } = await offerFrom(world, A, [B, C], slot);
+    await accept(B, id, 1);
+    await accept(C, id, 2);
+    const mails = await world.mails();
+    const { version } = await drop(A, id, 3, 'The feed is under water.');
+    const fresh = await newMails(mails);
+    const said = fresh.map((mail) => [
+      mail.recipient,
+      mail.subject.split(',')[0],
+      entry(mail).method,
+    ]);
+    expect(said.sort()).toEqual(
+      [
+        [as(A).email, 'You dropped out of the sked', 'CANCEL'],
+        [as(B).email, 'QA1LUN dropped out of the sked', 'REQUEST'],
+        [as(C).email, 'QA1LUN dropped out of the sked', 'REQUEST'],
+      ].sort(),
+    );
+    for (const mail of fresh) {
+      expect(entry(mail)).toMatchObject({ sequence: 3, ...slot });
+      expect(mail.text_body).toContain('The feed is under water.');
+      if (mail.calendar_method === 'REQUEST') expect(mail.calendar_body).not.toContain(A);
+    }
+    const taken = (who: string) =>
+      takenIntervals(world.services.db, [world.stationIds[who]!], window);
+    expect(await taken(A)).toEqual([]);
+    expect(await taken(B)).toEqual([slot]);
+    expect(await taken(C)).toEqual([slot]);
+
+    const { view } = await getSked(world.services, as(A), id);
+    expect(view).toMatchObject({ state: 'agreed', droppedOut: true, waitsForViewer: false });
+    expect(Object.values(view.choices).every((choice) => choice === null)).toBe(true);
+    expect(situation(view)).toBe('You dropped out. QB7TID and QC2FAR keep the slot.');
+    expect(historyOf(view).at(-1)).toMatchObject({ who: 'You', did: 'dropped out' });
+    expect(await skedsForCalendar(world.services, as(A), window)).toEqual([]);
+    expect((await homeOf(world.services, as(A))).next).toBeUndefined();
+    const listed = await listSkeds(world.services, as(A), skedFilterSchema.parse({}));
+    expect(listed.skeds.map((sked) => sked.droppedOut)).toEqual([true]);
+
+    const other = await getSked(world.services, as(B), id);
+    expect(other.view.leftParties.map((party) => party.callSign)).toEqual([A]);
+    expect(situation(other.view)).toContain('QA1LUN dropped out.');
+    world.clock.nowMs = slot.endMs;
+    expect((await waitsForViewer(world.services, as(A))).reports).toEqual([]);
+    expect((await waitsForViewer(world.services, as(B))).reports).toHaveLength(1);
+    expect(await caught(drop(A, id, version))).toBeInstanceOf(Conflict);
+  });
+
+  it('makes the sked agreed when the others have accepted, under the checks of accepting', async () => {
+    const slot = slotIn(window, 10);
+    const { id } = await offerFrom(world, A, [B, C], slot);
+    await accept(B, id, 1);
+    expect(await countWaiting(world.services, as(C))).toBe(1);
+    const inTheWay = await offerFrom(world, C, [B], slot);
+    await accept(B, inTheWay.id, 1);
+    expect(await caught(drop(C, id, 2))).toBeInstanceOf(Conflict);
+    await cancelSked(world.services, as(B), inTheWay.id, { version: 2, words: '' });
+    await drop(C, id, 2);
+    const { row, sked } = (await loadSked(world.services.db, id))!;
+    expect(row).toMatchObject({ state: 'agreed', agreed_version: 3 });
+    expect(sked.parties.map((party) => party.left)).toEqual([false, false, true]);
+    expect(await countWaiting(world.services, as(C))).toBe(0);
+    const calendars = calendarsAfter(await world.mails());
+    expect(calendars.get(as(A).email)!.get(row.uid)).toMatchObject({ status: 'CONFIRMED' });
+    expect(calendars.get(as(C).email)!.get(row.uid)).toMatchObject({ status: 'CANCELLED' });
+  });
+
+  it('leaves the entry with somebody who is in another party’s crew too', async () => {
+    await joinCrew(world.services, world.stationIds[B]!, as(C));
+    const { id } = await offerFrom(world, A, [B, C], slotIn(window, 10));
+    const sked = (await loadSked(world.services.db, id))!;
+    await dropOutSked(world.services, as(C), id, {
+      version: 1,
+      words: '',
+      as: world.stationIds[C]!,
+    });
+    const own = calendarsAfter(await world.mails())
+      .get(as(C).email)!
+      .get(sked.row.uid)!;
+    expect(own).toMatchObject({ method: 'REQUEST', status: 'TENTATIVE', partstat: 'NEEDS-ACTION' });
+    expect((await getSked(world.services, as(C), id)).view.droppedOut).toBe(false);
+  });
+});
+
+describe('crews', () => {
+  async function invitation(callSign: string): Promise<string> {
+    const { secret, hash } = newSecret();
+    await world.services.db
+      .insertInto('crew_invitation')
+      .values({
+        id: newId(),
+        station_id: world.stationIds[callSign]!,
+        email: 'whoever@people.example',
+        crew_role: 'operator',
+        token_hash: hash,
+        invited_by: as(callSign).id,
+        created_at: world.clock.nowMs,
+        expires_at: world.clock.nowMs + MINUTE_MS,
+        accepted_at: null,
+      })
+      .execute();
+    return secret;
+  }
+
+  it('takes the skeds ahead out of the calendar of somebody who leaves, and gives them to who joins', async () => {
+    const anna = await addPerson(world.services, 'Anna', 'UTC');
+    const { id } = await offerFrom(world, A, [B], slotIn(window, 10));
+    const offered = await offerFrom(world, B, [A], slotIn(window, 60));
+    await accept(B, id, 1);
+    const uid = (await loadSked(world.services.db, id))!.row.uid;
+    const other = (await loadSked(world.services.db, offered.id))!.row.uid;
+    await takeInvitation(world.services, anna, await invitation(A));
+    const shown = async () => calendarsAfter(await world.mails()).get(anna.email)!;
+    expect((await shown()).get(uid)).toMatchObject({ status: 'CONFIRMED', partstat: 'ACCEPTED' });
+    expect((await shown()).get(other)).toMatchObject({ status: 'TENTATIVE', rsvp: 'TRUE' });
+
+    await removeCrew(world.services, anna, world.stationIds[A]!, anna.id);
+    expect((await shown()).get(uid)).toMatchObject({ method: 'CANCEL', status: 'CANCELLED' });
+    expect((await shown()).get(other)).toMatchObject({ method: 'CANCEL', status: 'CANCELLED' });
+    const mails = await world.mails();
+    await accept(A, offered.id, 1);
+    expect((await newMails(mails)).map((mail) => mail.recipient)).not.toContain(anna.email);
+    expect((await shown()).get(other)).toMatchObject({ status: 'CANCELLED' });
   });
 });
 
@@ -352,12 +530,15 @@ describe('ends', () => {
     await declineSked(world.services, as(B), declined.id, { version: 1, words: 'At work.' });
     let fresh = await newMails(mails);
     expect(fresh.map((mail) => [mail.recipient, mail.subject.split(',')[0]])).toEqual([
+      [as(B).email, 'You declined the sked'],
       [as(A).email, 'QB7TID declined the sked'],
     ]);
+    expect(fresh.map((mail) => mail.calendar_method)).toEqual(['CANCEL', 'CANCEL']);
     mails = await world.mails();
     await withdrawSked(world.services, as(A), withdrawn.id, { version: 1, words: '' });
     fresh = await newMails(mails);
-    expect(fresh.map((mail) => mail.recipient)).toEqual([as(B).email]);
+    expect(fresh.map((mail) => mail.recipient)).toEqual([as(B).email, as(A).email]);
+    expect(fresh.map((mail) => mail.calendar_method)).toEqual(['CANCEL', 'CANCEL']);
     mails = await world.mails();
     expect(await lapseDueSkeds(world.services)).toBe(0);
     world.clock.nowMs = slot.startMs;
@@ -366,6 +547,7 @@ describe('ends', () => {
     expect(await lapseDueSkeds(world.services)).toBe(0);
     fresh = await newMails(mails);
     expect(fresh.map((mail) => mail.recipient).sort()).toEqual([as(A).email, as(B).email].sort());
+    expect(fresh.map((mail) => mail.calendar_method)).toEqual(['CANCEL', 'CANCEL']);
     const error = await caught(accept(B, lapsing.id, 2));
     expect((error as Conflict).message).toContain('lapsed');
   });

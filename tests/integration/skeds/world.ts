@@ -54,14 +54,15 @@ export async function giveBand(world: World, callSign: string, setup: BandSetup)
     .execute();
 }
 
-/** A new database file with three stations of a keeper each. */
-export async function newWorld(): Promise<World> {
+/** A new database file with three stations of a keeper each; further settings as in the environment. */
+export async function newWorld(settings: Record<string, string> = {}): Promise<World> {
   const folder = mkdtempSync(path.join(tmpdir(), 'echotide-skeds-'));
   const config = readConfig({
     PUBLIC_URL: 'http://127.0.0.1:4999',
     DATA_DIR: folder,
     SMTP_HOST: '127.0.0.1',
     MAIL_FROM: 'Echotide <mail@echotide.example>',
+    ...settings,
   });
   const clock = { nowMs: NOW_MS };
   const db = openDatabase(config.databaseFile);

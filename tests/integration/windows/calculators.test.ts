@@ -215,6 +215,10 @@ describe('POST /api/v1/windows', () => {
   };
   const withSky = (sky: unknown) => ({ ...SEARCH, stations: [{ ...A, sky }, B] });
   const point = (azimuthDeg: number, elevationDeg: number) => ({ azimuthDeg, elevationDeg });
+  const withSetup = (part: object) => ({
+    ...EQUIPPED,
+    stations: [{ ...EQUIPPED.stations[0], setup: { ...setup, ...part } }, EQUIPPED.stations[1]],
+  });
 
   it.each([
     ['one station', { ...SEARCH, stations: [A] }, 'stations'],
@@ -275,6 +279,20 @@ describe('POST /api/v1/windows', () => {
       withSky({ elevationFromDeg: 40, elevationToDeg: 30 }),
       'stations.0.sky.elevationToDeg',
     ],
+    [
+      'a lowest elevation below the nadir',
+      withSky({ elevationFromDeg: -90.1 }),
+      'stations.0.sky.elevationFromDeg',
+    ],
+    ['negative power', withSetup({ powerAtFeedW: -5 }), 'stations.0.setup.powerAtFeedW'],
+    [
+      'an efficiency over 1',
+      withSetup({ antenna: { diameterM: 3, apertureEfficiency: 1.01 } }),
+      'stations.0.setup.antenna.apertureEfficiency',
+    ],
+    ['an empty chain', withSetup({ receive: { stages: [] } }), 'stations.0.setup.receive.stages'],
+    ['a frequency under 30 MHz', { ...EQUIPPED, frequencyMhz: 29.9 }, 'frequencyMhz'],
+    ['a frequency over 100 GHz', { ...EQUIPPED, frequencyMhz: 100_000.1 }, 'frequencyMhz'],
     [
       'a setup without an antenna',
       { ...SEARCH, stations: [{ ...A, setup: { polarization: 'vertical' } }, B] },

@@ -31,8 +31,12 @@ describe('isOwnHost', () => {
   });
 });
 
-const asks = (method: string, headers: Record<string, string>, pathname = '/account') =>
-  mayChange({ method, pathname, headers: new Headers(headers) }, PUBLIC);
+const asks = (
+  method: string,
+  headers: Record<string, string>,
+  pathname = '/account',
+  search = '',
+) => mayChange({ method, pathname, search, headers: new Headers(headers) }, PUBLIC);
 
 describe('mayChange', () => {
   it.each(['GET', 'HEAD', 'OPTIONS'])('%s needs no origin', (method) => {
@@ -57,11 +61,55 @@ describe('mayChange', () => {
     ).toBe(false);
   });
 
+  it('leaves the way in for mails to the secret it asks for', () => {
+    expect(asks('POST', {}, paths.api.inboundMail)).toBe(true);
+    expect(asks('POST', {}, `${paths.api.inboundMail}/x`)).toBe(false);
+  });
+
   it('leaves the calculators open, and nothing beside them', () => {
     for (const open of [paths.api.moon, paths.api.windows, paths.api.link]) {
       expect(asks('POST', { origin: 'https://elsewhere.example' }, open)).toBe(true);
       expect(asks('POST', {}, `${open}/more`)).toBe(false);
     }
     expect(asks('POST', {}, paths.api.skeds)).toBe(false);
+  });
+
+  it('lets a mail program unsubscribe by POST, at exactly that address and with nothing beside it', () => {
+    const address = paths.unsubscribe('person.reminder.mac');
+    expect(asks('POST', {}, address)).toBe(true);
+    expect(asks('POST', { origin: 'https://elsewhere.example' }, address)).toBe(true);
+    for (const method of ['PUT', 'PATCH', 'DELETE', 'QUERY']) {
+      expect(asks(method, {}, address)).toBe(false);
+    }
+    // A page takes the name of an action from its query.
+    expect(asks('POST', {}, address, '?_action=people.signOutEverywhere')).toBe(false);
+    expect(asks('POST', {}, address, '?')).toBe(false);
+    for (const near of [
+      `${address}/`,
+      `${address}/more`,
+      '/unsubscribe',
+      '/unsubscribe/',
+      '/unsubscribed/x',
+      `/account${address}`,
+      `/${address}`,
+      `${address}\n/account`,
+    ]) {
+      expect(asks('POST', {}, near), near).toBe(false);
+    }
+  });
+});
+
+describe('pages whose address is a secret', () => {
+  it('take the origin "null" of their own forms, and nobody else does', () => {
+    for (const page of ['/answer/secret', '/answer/secret/move', '/no-more/token']) {
+      expect(asks('POST', { origin: 'null' }, page)).toBe(true);
+      expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'same-origin' }, page)).toBe(true);
+      expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'cross-site' }, page)).toBe(false);
+      expect(asks('POST', { origin: 'https://elsewhere.example' }, page)).toBe(false);
+    }
+    expect(asks('POST', { origin: 'null' })).toBe(false);
+    expect(asks('POST', {}, '/answer/secret')).toBe(false);
+    expect(asks('POST', {}, '/no-more/token')).toBe(true);
+    expect(asks('POST', {}, '/no-more/token', '?_action=people.signIn')).toBe(false);
   });
 });

@@ -1,7 +1,13 @@
-import { describe, expect, it } from 'vitest';
+import type { AstroGlobal } from 'astro';
+import { describe, expect, it, vi } from 'vitest';
+import type { Viewer } from '~/server/auth/viewer';
 import { TooManyRequests } from '~/server/errors';
 import { clientKey } from '~/server/http/clientAddress';
-import { limitRate } from '~/server/http/rateLimit';
+import { limitCalculator, limitRate, limitVisitor } from '~/server/http/rateLimit';
+
+vi.mock('~/server/services', () => ({
+  services: () => ({ config: { calculatorRequestsPerMinute: 2 } }),
+}));
 
 describe('limitRate', () => {
   it('lets so many through in a minute and says how long to wait', async () => {
@@ -19,6 +25,25 @@ describe('limitRate', () => {
     await limitRate('apart', 'two', 1);
     await limitRate('apart too', 'one', 1);
     await expect(limitRate('apart', 'one', 1)).rejects.toBeInstanceOf(TooManyRequests);
+  });
+});
+
+describe('limitVisitor', () => {
+  const from = (clientAddress: string) => ({ clientAddress }) as AstroGlobal;
+
+  it('counts pages and calculators of a visitor together', async () => {
+    await limitVisitor(from('192.0.2.20'), null);
+    await limitCalculator(from('192.0.2.20'));
+    const third = limitVisitor(from('192.0.2.20'), null);
+    await expect(third).rejects.toBeInstanceOf(TooManyRequests);
+    await limitVisitor(from('192.0.2.21'), null);
+  });
+
+  it('lets people with an account open pages as they like', async () => {
+    for (let i = 0; i < 5; i += 1) {
+      await limitVisitor(from('192.0.2.22'), { id: 'someone' } as Viewer);
+    }
+    await limitVisitor(from('192.0.2.22'), null);
   });
 });
 

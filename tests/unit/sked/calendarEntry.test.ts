@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import ICAL from 'ical.js';
 import { describe, expect, it } from 'vitest';
-import { skedCalendar } from '~/server/mail/templates/skedCalendar';
+import { skedCalendar, type PersonalEntry } from '~/server/mail/templates/skedCalendar';
 import type { SkedMailFacts, SkedRecipient } from '~/server/mail/templates/skedFacts';
 import { MINUTE_MS } from '~/domain/time/interval';
 
@@ -11,6 +11,7 @@ const STAMP = Date.UTC(2027, 0, 18, 18, 42);
 const facts: SkedMailFacts = {
   uid: 'b6b3a9f2-sked@echotide.example',
   url: 'https://echotide.example/skeds/b6b3a9f2',
+  sheetUrl: 'https://echotide.example/skeds/b6b3a9f2/sheet',
   bandLabel: '1296 MHz',
   frequency: '1296.065 MHz',
   modeLabel: 'Q65-60C',
@@ -25,12 +26,20 @@ const edda: SkedRecipient = {
   email: 'edda@tide.example',
   name: 'Edda',
   timeZone: 'America/New_York',
+  guest: false,
   stationIds: ['b'],
 };
 const FROM = 'Echotide <mail@echotide.example>';
 
-function write(recipient = edda, method: 'REQUEST' | 'CANCEL' = 'REQUEST', sequence = 0): string {
-  return skedCalendar(facts, recipient, { method, sequence, ...SLOT }, FROM, STAMP);
+function write(recipient = edda, over: Partial<PersonalEntry> = {}): string {
+  const entry = {
+    status: 'CONFIRMED',
+    sequence: 0,
+    asked: false,
+    stampMs: STAMP,
+    ...SLOT,
+  } as const;
+  return skedCalendar(facts, recipient, { ...entry, ...over }, FROM);
 }
 function read(text: string) {
   const calendar = new ICAL.Component(ICAL.parse(text) as unknown[]);
@@ -77,7 +86,7 @@ describe('calendar entry of a sked', () => {
   });
 
   it('cancels under the same UID with a higher number', () => {
-    const { calendar, event } = read(write(edda, 'CANCEL', 3));
+    const { calendar, event } = read(write(edda, { status: 'CANCELLED', sequence: 3 }));
     expect(calendar.getFirstPropertyValue('method')).toBe('CANCEL');
     expect(event.getFirstPropertyValue('status')).toBe('CANCELLED');
     expect(event.getFirstPropertyValue('uid')).toBe(facts.uid);

@@ -2,14 +2,16 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   decide,
+  type AnswerKind,
   decideOffer,
   hasLapsed,
   holdsBooking,
-  type CalendarDue,
   type Decision,
   type Sked,
   type SkedCommand,
 } from '~/domain/sked/machine';
+import type { CalendarDue } from '~/domain/sked/standing';
+import { stillIn } from '~/domain/sked/standing';
 import { DAY_MS, HOUR_MS, MINUTE_MS } from '~/domain/time/interval';
 
 const NOW = Date.UTC(2027, 0, 18, 18, 42);
@@ -31,12 +33,8 @@ function refusal(decision: Decision) {
   if (decision.ok) throw new Error('not refused');
   return decision.refusal;
 }
-const act = (
-  sked: Sked,
-  kind: 'accept' | 'decline' | 'withdraw' | 'cancel' | 'report',
-  by: string,
-  nowMs = NOW,
-) => decide(sked, { kind, by, version: sked.version }, { nowMs });
+const act = (sked: Sked, kind: AnswerKind, by: string, nowMs = NOW) =>
+  decide(sked, { kind, by, version: sked.version }, { nowMs });
 const moveTo = (sked: Sked, by: string, slot = LATER, nowMs = NOW) =>
   decide(sked, { kind: 'move', by, version: sked.version, slot }, { nowMs });
 
@@ -86,7 +84,7 @@ describe('offering', () => {
 });
 
 describe('answering', () => {
-  it('is agreed when the last of the parties accepted, with a calendar REQUEST numbered 0', () => {
+  it('is agreed when the last of the parties accepted, and the calendar entry becomes firm', () => {
     const first = decide(
       offered([A, B, C]),
       { kind: 'accept', by: 'b', version: 1 },
@@ -95,7 +93,7 @@ describe('answering', () => {
     expect(taken(first).state).toBe('offered');
     const second = act(taken(first), 'accept', 'c');
     expect(taken(second).state).toBe('agreed');
-    expect(second.ok && second.calendar).toEqual({ method: 'REQUEST', sequence: 0, ...SLOT });
+    expect(second.ok && second.calendar).toEqual({ status: 'CONFIRMED', sequence: 2, ...SLOT });
     expect(second.ok && second.happenings.map((event) => event.kind)).toEqual([
       'accepted',
       'agreed',
@@ -110,13 +108,13 @@ describe('answering', () => {
     expect(moved).toMatchObject(LATER);
   });
 
-  it('gives an agreed slot up when moved: CANCEL for the old slot, then REQUEST with a higher number', () => {
+  it('gives an agreed slot up when moved: tentative at the new time, firm again with a higher number', () => {
     const agreed = taken(act(offered(), 'accept', 'b'));
     const moved = moveTo(agreed, 'b');
     expect(taken(moved).state).toBe('offered');
-    expect(moved.ok && moved.calendar).toEqual({ method: 'CANCEL', sequence: 1, ...SLOT });
+    expect(moved.ok && moved.calendar).toEqual({ status: 'TENTATIVE', sequence: 2, ...LATER });
     const again = act(taken(moved), 'accept', 'a');
-    expect(again.ok && again.calendar).toEqual({ method: 'REQUEST', sequence: 2, ...LATER });
+    expect(again.ok && again.calendar).toEqual({ status: 'CONFIRMED', sequence: 3, ...LATER });
   });
 
   it('lets a counter-offer follow a "no"', () => {
@@ -158,6 +156,54 @@ describe('answering', () => {
   });
 });
 
+describe('dropping out', () => {
+  const three = () => offered([A, B, C]);
+  const agreedByThree = () => taken(act(taken(act(three(), 'accept', 'b')), 'accept', 'c'));
+
+  it('keeps an agreed slot for the rest, whoever leaves, the one whose offer it was too', () => {
+    for (const by of ['a', 'b', 'c']) {
+      const decision = act(agreedByThree(), 'dropOut', by);
+      const sked = taken(decision);
+      expect(sked).toMatchObject({ state: 'agreed', ...SLOT });
+      expect(stillIn(sked.parties).map((party) => party.stationId)).not.toContain(by);
+      expect(decision.ok && decision.happenings.map((event) => event.kind)).toEqual(['droppedOut']);
+      expect(decision.ok && decision.calendar).toMatchObject({ status: 'CONFIRMED', ...SLOT });
+    }
+  });
+
+  it('makes the offer agreed when everybody who is left has accepted it', () => {
+    const half = taken(act(three(), 'accept', 'b'));
+    const decision = act(half, 'dropOut', 'c');
+    expect(taken(decision).state).toBe('agreed');
+    expect(decision.ok && decision.happenings.map((event) => event.kind)).toEqual([
+      'droppedOut',
+      'agreed',
+    ]);
+    expect(taken(act(three(), 'dropOut', 'c')).state).toBe('offered');
+  });
+
+  it('leaves two at least, and says what to do instead', () => {
+    expect(refusal(act(offered(), 'dropOut', 'b')).sentence).toContain('Decline the offer');
+    const agreed = taken(act(offered(), 'accept', 'b'));
+    expect(refusal(act(agreed, 'dropOut', 'b')).sentence).toContain('Cancel the sked');
+    const left = taken(act(agreedByThree(), 'dropOut', 'c'));
+    expect(refusal(act(left, 'dropOut', 'b')).sentence).toContain('Two stations are left');
+  });
+
+  it('is for good, and not for one’s own open offer, nor after the slot', () => {
+    const left = taken(act(agreedByThree(), 'dropOut', 'c'));
+    for (const kind of ['accept', 'decline', 'dropOut', 'cancel', 'report'] as const) {
+      expect(refusal(act(left, kind, 'c')).sentence).toContain('QC2FAR has dropped out');
+    }
+    expect(refusal(moveTo(left, 'c')).sentence).toContain('QC2FAR has dropped out');
+    const moved = taken(moveTo(left, 'a'));
+    expect(taken(act(moved, 'accept', 'b')).state).toBe('agreed');
+    expect(refusal(act(three(), 'dropOut', 'a')).sentence).toContain('Withdraw');
+    const over = act(agreedByThree(), 'dropOut', 'c', SLOT.endMs);
+    expect(refusal(over).sentence).toContain('Report');
+  });
+});
+
 describe('lapsing', () => {
   it('lapses an offer at its start and nothing else', () => {
     expect(refusal(decide(offered(), { kind: 'lapse' }, { nowMs: START - 1 })).code).toBe('early');
@@ -178,7 +224,7 @@ const commandArbitrary = fc.record({
     { weight: 3, arbitrary: fc.constant('move') },
     {
       weight: 3,
-      arbitrary: fc.constantFrom('decline', 'withdraw', 'cancel', 'report', 'lapse'),
+      arbitrary: fc.constantFrom('decline', 'dropOut', 'withdraw', 'cancel', 'report', 'lapse'),
     },
   ),
   by: fc.constantFrom('a', 'a', 'b', 'b', 'c', 'c', 'stranger'),
@@ -224,29 +270,34 @@ describe('any sequence of commands', () => {
           expect(sked.version).toBe(before.version + 1);
           expect(decision.happenings.length).toBeGreaterThan(0);
           expect(['withdrawn', 'lapsed', 'cancelled']).not.toContain(before.state);
-          const everyoneAccepted = sked.parties.every((party) => party.answer === 'accepted');
+          const still = stillIn(sked.parties);
+          expect(still.length).toBeGreaterThanOrEqual(2);
+          for (const party of before.parties) {
+            const after = sked.parties.find(({ stationId }) => stationId === party.stationId)!;
+            if (party.left) expect(after).toEqual(party);
+          }
+          const everyoneAccepted = still.every((party) => party.answer === 'accepted');
           if (holdsBooking(sked)) expect(everyoneAccepted).toBe(true);
           if (sked.state === 'offered') {
             expect(everyoneAccepted).toBe(false);
             expect(hasLapsed(sked, nowMs)).toBe(false);
-            const offering = sked.parties.find((party) => party.stationId === sked.offeredBy);
+            const offering = still.find((party) => party.stationId === sked.offeredBy);
             expect(offering?.answer).toBe('accepted');
           }
           if (sked.state === 'agreed' && before.state !== 'agreed') {
-            expect(decision.calendar?.method).toBe('REQUEST');
+            expect(decision.calendar?.status).toBe('CONFIRMED');
             reachedAgreement += 1;
           }
           if (before.state === 'agreed' && !holdsBooking(sked)) {
-            expect(decision.calendar?.method).toBe('CANCEL');
+            expect(decision.calendar?.status).toBe(
+              sked.state === 'offered' ? 'TENTATIVE' : 'CANCELLED',
+            );
           }
           if (decision.calendar) calendar.push(decision.calendar);
         }
-        // Calendar messages alternate REQUEST, CANCEL, … and count up from 0 without a gap.
+        // Calendar messages count up from the offer's 0 without a gap; only a report sends none.
         expect(calendar.map((message) => message.sequence)).toEqual(
-          calendar.map((_, index) => index),
-        );
-        expect(calendar.map((message) => message.method)).toEqual(
-          calendar.map((_, index) => (index % 2 === 0 ? 'REQUEST' : 'CANCEL')),
+          calendar.map((_, index) => index + 1),
         );
       }),
       { numRuns: 3000, seed: 20270118 },

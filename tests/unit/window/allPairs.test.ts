@@ -48,11 +48,15 @@ const azimuths = fc.record({ azimuthFromDeg: angle(0, 359), azimuthToDeg: angle(
 
 const sky = fc.record(
   {
-    elevationFromDeg: angle(-2, 30),
-    elevationToDeg: angle(40, 89),
+    elevationFromDeg: angle(-20, 60),
+    elevationToDeg: angle(0, 90),
     transmitElevationFromDeg: angle(0, 25),
     blocked: fc.array(
-      azimuths.map((span) => ({ ...span, elevationFromDeg: 0, elevationToDeg: 35 })),
+      azimuths.map((span) => ({
+        ...span,
+        elevationFromDeg: span.azimuthFromDeg / 12,
+        elevationToDeg: 20 + span.azimuthToDeg / 6,
+      })),
       { maxLength: 2 },
     ),
     horizon: fc.constant(fullSkies[0].sky.horizon!),
@@ -63,7 +67,7 @@ const sky = fc.record(
 const station = fc.record({
   callSign: fc.constantFrom('QA1LUN', 'QB7TID', 'QK3OSL'),
   site: fc.record({
-    latitudeDeg: angle(-80, 80),
+    latitudeDeg: angle(-90, 90),
     longitudeDeg: angle(-180, 180),
     heightM: angle(0, 3000),
   }),
@@ -92,7 +96,7 @@ describe('windows of all pairs', () => {
           });
         },
       ),
-      { numRuns: 60 },
+      { numRuns: 150 },
     );
   });
 

@@ -1,9 +1,12 @@
 import { describe, expect, it } from 'vitest';
-import { computeLink } from '~/domain/link/budget';
+import { buildMoonTable } from '~/domain/ephemeris';
+import { computeLink, describe as describeLink } from '~/domain/link/budget';
 import type { BandSetup } from '~/domain/station/setup';
 import { DAY_MS, HOUR_MS, MINUTE_MS, type Interval } from '~/domain/time/interval';
+import { judgedAt } from '~/domain/window/judge';
 import { LayersCache, windowLayers } from '~/domain/window/layers';
 import { ledgerTerms, ledgerText, linkSheets } from '~/domain/window/ledgerSheet';
+import { linkMatrix, pairsOf } from '~/domain/window/linkMatrix';
 import {
   qualityFigure,
   qualityOf,
@@ -207,6 +210,41 @@ describe('windows judged by margin', () => {
       );
       expect(Math.abs(three.windowQuality[index]!.db - Math.min(...pairs))).toBeLessThan(0.05);
     }
+  });
+
+  it('stand in a table of all directions, whose weakest is what the round is judged by', () => {
+    const third = station('QC2FAR', [50.2, 8.6], setup(1.2, 20));
+    const round = [...PAIR, third];
+    const { judge, windows } = windowLayers({ ...question, lowestDeg: [null, null, null] }, round);
+    const { timeMs } = windows[0]!.best;
+    const table = buildMoonTable({ startMs: timeMs - HOUR_MS, endMs: timeMs + HOUR_MS });
+    const pairs = pairsOf(3).map((pair, at) => {
+      const moment = judge.links[at]!.over(table);
+      moment.compute(timeMs);
+      return { ...pair, link: describeLink(moment) };
+    });
+    for (const { first, second, link } of pairs) {
+      expect(link.directions[0].from).toBe(round[first]!.callSign);
+      expect(link.directions[0].to).toBe(round[second]!.callSign);
+    }
+    const matrix = linkMatrix(
+      round.map(({ callSign }) => callSign),
+      pairs,
+      timeMs,
+    );
+    const { from, to } = matrix.weakest!;
+    const cell = matrix.cells[from]![to]!;
+    expect('margin' in cell && cell.margin).toEqual(judgedAt(judge, timeMs, table));
+    expect(matrix.sentence).toContain(`${round[from]!.callSign} to ${round[to]!.callSign}`);
+    expect(matrix.cells.map((row, at) => row[at])).toEqual([null, null, null]);
+
+    const set = linkMatrix(
+      ['A', 'B'],
+      [{ first: 0, second: 1, link: { ...pairs[0]!.link, moonUp: false } }],
+      timeMs,
+    );
+    expect(set.cells[0]![1]).toEqual({ why: 'Moon down' });
+    expect(set.sentence).toBe('No direction has a margin then.');
   });
 
   it('fall back to degradation and say why', () => {

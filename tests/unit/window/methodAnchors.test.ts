@@ -39,16 +39,21 @@ describe('parts of the method page', () => {
     expect(paths.methodPart('doppler')).toBe(`${paths.method}#doppler`);
   });
 
-  it.each([...parts])(
-    '%s names what, how good and, where there is a formula, a source',
-    (_id, text) => {
-      expect(text).toMatch(/\*\*What is (computed|taken)\.\*\*/);
-      expect(text).toContain('**How good.**');
-      if (!text.includes('\n> ')) return;
-      expect(text).toMatch(/\*\*Sources?\.\*\*/);
-      expect(text).toMatch(
-        /_[^_]*(read in the source|from memory|computed for this project|own)[^_]*_/i,
-      );
+  it.each([...parts])('%s has a formula, a source, its limits and its error', (_id, text) => {
+    expect(text).toMatch(/\*\*What is (computed|taken)\.\*\*/);
+    expect(text).toContain('\n> ');
+    expect(text).toMatch(/\*\*Sources?\.\*\*/);
+    const howGood = text.slice(text.indexOf('**How good.**'));
+    expect(howGood.length).toBeGreaterThan(100);
+    expect(text).toMatch(/_[^_]*(read in the source|from memory|computed for this project)[^_]*_/i);
+  });
+
+  it.each(['atmosphere', 'antenna', 'polarisation', 'chance', 'spread', 'modes', 'margin', 'sky'])(
+    '%s says plainly which of its bounds nobody else stands for',
+    (id) => {
+      const text = parts.get(id)!;
+      const howGood = text.slice(text.indexOf('**How good.**'));
+      expect(howGood).toMatch(/_[^_]*own estimate, no source[^_]*_/i);
     },
   );
 

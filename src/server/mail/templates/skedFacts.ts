@@ -2,12 +2,14 @@ import { bandById } from '../../../domain/station/bands';
 import { modeById } from '../../../domain/station/modes';
 import { formatFrequency } from '../../../domain/sked/frequency';
 import type { Interval } from '../../../domain/time/interval';
+import { paths } from '../../../paths';
 import type { SkedRow } from '../../db/tables';
 
 /** What every mail and calendar entry about a sked says. */
 export interface SkedMailFacts extends Interval {
   uid: string;
   url: string;
+  sheetUrl: string;
   bandLabel: string;
   frequency: string;
   modeLabel: string;
@@ -19,12 +21,14 @@ export interface SkedRecipient {
   email: string;
   name: string;
   timeZone: string;
+  /** Whether the person has no account and keeps a guest station. */
+  guest: boolean;
   /** Stations of the sked to whose crew the person belongs. */
   stationIds: string[];
 }
 
 export function skedFacts(
-  row: Pick<SkedRow, 'uid' | 'band' | 'mode' | 'frequency_mhz'>,
+  row: Pick<SkedRow, 'id' | 'uid' | 'band' | 'mode' | 'frequency_mhz'>,
   stations: SkedMailFacts['stations'],
   slot: Interval,
   url: string,
@@ -32,6 +36,7 @@ export function skedFacts(
   return {
     uid: row.uid,
     url,
+    sheetUrl: new URL(paths.skedSheet(row.id), url).href,
     bandLabel: bandById(row.band).label,
     frequency: formatFrequency(row.frequency_mhz),
     modeLabel: modeById(row.mode).label,

@@ -1,3 +1,4 @@
+import { actorName } from '../../../domain/sked/told';
 import { listOf } from '../../../domain/sked/view';
 import {
   formatDuration,
@@ -5,12 +6,21 @@ import {
   formatUtc,
   formatUtcRange,
 } from '../../../domain/time/format';
+import type { SkedState } from '../../../domain/sked/types';
 import type { Interval } from '../../../domain/time/interval';
 import type { MailContent } from '../shell';
 import type { SkedMailFacts, SkedRecipient } from './skedFacts';
 
 export type SkedMailKind =
-  'offered' | 'moved' | 'agreed' | 'declined' | 'withdrawn' | 'lapsed' | 'cancelled';
+  | 'offered'
+  | 'moved'
+  | 'accepted'
+  | 'agreed'
+  | 'declined'
+  | 'droppedOut'
+  | 'withdrawn'
+  | 'lapsed'
+  | 'cancelled';
 
 export interface SkedNews {
   kind: SkedMailKind;
@@ -24,6 +34,14 @@ export interface SkedNews {
   gaveUpAgreed: boolean;
   /** Whether the slot before was the recipient's own offer. */
   yourOffer: boolean;
+  /** Whether the recipient has to answer now. */
+  asked: boolean;
+  /** Whether the recipient's stations have no part in it any more. */
+  out: boolean;
+  /** Where the sked stands now. */
+  state: SkedState;
+  /** Call signs that have not answered yet. */
+  waiting: string[];
 }
 
 /** Subject and content of a mail about a sked for one recipient: UTC first, then the recipient's own zone. */
@@ -40,21 +58,31 @@ export function skedMail(
       title,
       paragraphs,
       facts: [
-        ['UTC', formatUtcRange(facts, { withYear: true })],
-        ...(recipient.timeZone === 'UTC'
-          ? []
-          : [['Your time', formatLocalRange(facts, recipient.timeZone)] as [string, string]]),
-        ...facts.stations.map(
-          ({ callSign, timeZone }) =>
-            [callSign, formatLocalRange(facts, timeZone)] as [string, string],
-        ),
-        ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
+        ...skedRows(facts, recipient.timeZone),
         ...(words && by ? [[`${by.personName} writes`, words] as [string, string]] : []),
+        ...(news.kind === 'agreed' && !recipient.guest
+          ? [['For the hour itself', facts.sheetUrl] as [string, string]]
+          : []),
       ],
       button: { label: button, url: facts.url },
       footer: `You get this mail because you belong to the crew of ${listOf(yourCallSigns)}.`,
     },
   };
+}
+
+/** When and on what, as every mail about a sked says it. */
+export function skedRows(facts: SkedMailFacts, timeZone: string): [string, string][] {
+  return [
+    ['UTC', formatUtcRange(facts, { withYear: true })],
+    ...(timeZone === 'UTC'
+      ? []
+      : [['Your time', formatLocalRange(facts, timeZone)] as [string, string]]),
+    ...facts.stations.map(
+      (station) =>
+        [station.callSign, formatLocalRange(facts, station.timeZone)] as [string, string],
+    ),
+    ['Band and mode', `${facts.frequency}, ${facts.modeLabel}`],
+  ];
 }
 
 interface Told {
@@ -63,38 +91,51 @@ interface Told {
   button: string;
 }
 
+const TENTATIVE = 'It stands in your calendar as tentative until every party has accepted.';
+const REMOVED = 'The tentative entry is taken out of your calendar.';
+
 function told(news: SkedNews, yours: readonly string[]): Told {
-  const { facts, by } = news;
-  const all = listOf(facts.stations.map((station) => station.callSign));
-  const others = facts.stations
-    .map((station) => station.callSign)
-    .filter((callSign) => !yours.includes(callSign));
-  const partners = listOf(others.length > 0 ? others : facts.stations.map((one) => one.callSign));
-  const actor = by?.you ? 'You' : (by?.callSign ?? '');
-  const who = by?.you ? 'You' : `${by?.personName}, ${by?.callSign},`;
-  const asks = by?.you ? 'ask' : 'asks';
+  const { facts, by, waiting } = news;
+  const callSigns = facts.stations.map((station) => station.callSign);
+  const all = listOf(callSigns);
+  const others = callSigns.filter((callSign) => !yours.includes(callSign));
+  const partners = listOf(others.length > 0 ? others : callSigns);
+  const you = by?.you === true;
+  const actor = you ? 'You' : (by?.callSign ?? '');
+  const who = you || !by ? 'You' : withComma(actorName(by));
   const lapses = `Without an answer the offer lapses ${formatUtc(facts.startMs)}.`;
+  const awaited = `${listOf(waiting)} ${waiting.length === 1 ? 'has' : 'have'} not answered yet. ${lapses}`;
+  const open = news.asked ? 'Answer the offer' : 'Open the sked';
   switch (news.kind) {
     case 'offered':
       return {
-        title: `${actor} offers a sked`,
-        paragraphs: [`${who} offers a sked on ${facts.bandLabel}. ${lapses}`],
-        button: 'Answer the offer',
+        title: `${actor} ${you ? 'offer' : 'offers'} a sked`,
+        paragraphs: [
+          `${who} ${you ? 'offer' : 'offers'} a sked on ${facts.bandLabel}${news.asked ? '' : ` to ${partners}`}. ${lapses}`,
+          ...(news.asked ? [] : [TENTATIVE]),
+        ],
+        button: open,
       };
     case 'moved':
       return {
-        title: `${actor} moved ${news.yourOffer && !by?.you ? 'your offer' : 'the sked'}`,
+        title: `${actor} moved ${news.yourOffer && !you ? 'your offer' : 'the sked'}`,
         paragraphs: [
-          `${who} ${asks} for another time: ${shift(news.before, facts)} than before.`,
+          `${who} ${you ? 'ask' : 'asks'} for another time: ${shift(news.before, facts)} than before.`,
           ...(news.gaveUpAgreed
             ? [
-                `The agreed ${formatUtcRange(news.before)} is given up and taken out of your calendar. ` +
-                  'The sked is agreed again when every party has accepted the new time.',
+                `The agreed ${formatUtcRange(news.before)} is given up. The entry in your calendar moves to the new ` +
+                  'time and is tentative until every party has accepted it.',
               ]
             : []),
           lapses,
         ],
-        button: by?.you ? 'Open the sked' : 'Answer the offer',
+        button: open,
+      };
+    case 'accepted':
+      return {
+        title: `${actor} accepted the sked`,
+        paragraphs: [awaited, TENTATIVE],
+        button: open,
       };
     case 'agreed':
       return {
@@ -102,35 +143,68 @@ function told(news: SkedNews, yours: readonly string[]): Told {
         paragraphs: [
           `${all} have accepted the same slot. The calendar entry is in this mail; it follows when the sked is moved or cancelled.`,
         ],
-        button: 'Open the sked',
+        button: open,
       };
     case 'declined':
       return {
         title: `${actor} declined the sked`,
-        paragraphs: [`${who} cannot take this slot. You can offer another time on its page.`],
+        paragraphs: [
+          you
+            ? `You declined this slot. You can still offer another time on its page. ${REMOVED}`
+            : `${who} cannot take this slot. You can offer another time on its page. ${REMOVED}`,
+        ],
         button: 'Offer another time',
       };
+    case 'droppedOut':
+      return droppedOut(news, { actor, who, all, awaited, open });
     case 'withdrawn':
       return {
         title: `${actor} withdrew the offer`,
-        paragraphs: [`${who} took the offer back. There is nothing left to answer.`],
-        button: 'Open the sked',
+        paragraphs: [`${who} took the offer back. There is nothing left to answer. ${REMOVED}`],
+        button: open,
       };
     case 'lapsed':
       return {
         title: `Lapsed: the sked with ${partners}`,
-        paragraphs: ['Its time came before every party had accepted it. Nothing was agreed.'],
-        button: 'Open the sked',
+        paragraphs: [
+          `Its time came before every party had accepted it. Nothing was agreed. ${REMOVED}`,
+        ],
+        button: open,
       };
     case 'cancelled':
       return {
-        title: by?.you ? `You cancelled the sked with ${partners}` : `${actor} cancelled the sked`,
+        title: you ? `You cancelled the sked with ${partners}` : `${actor} cancelled the sked`,
         paragraphs: [
           `The agreed sked between ${all} will not be worked. Its calendar entry is withdrawn with this mail.`,
         ],
-        button: 'Open the sked',
+        button: open,
       };
   }
+}
+
+function droppedOut(
+  news: SkedNews,
+  words: { actor: string; who: string; all: string; awaited: string; open: string },
+): Told {
+  const { actor, who, all, awaited, open } = words;
+  if (news.out) {
+    return {
+      title: `${actor} dropped out of the sked`,
+      paragraphs: [
+        `${who} no longer ${actor === 'You' ? 'take' : 'takes'} part; ${all} keep the slot. The entry is taken out of your calendar.`,
+      ],
+      button: open,
+    };
+  }
+  const now =
+    news.state === 'agreed'
+      ? 'Everybody who is left has accepted the slot: the sked is agreed.'
+      : awaited;
+  return {
+    title: `${actor} dropped out of the sked`,
+    paragraphs: [`${who} no longer takes part. ${all} keep the slot.`, now],
+    button: open,
+  };
 }
 
 /** "15 min later", "1 d 2 h earlier"; where only the length changes: "10 min longer". */
@@ -139,4 +213,9 @@ function shift(before: Interval, after: Interval): string {
   if (byMs !== 0) return `${formatDuration(Math.abs(byMs))} ${byMs > 0 ? 'later' : 'earlier'}`;
   const longerMs = after.endMs - before.endMs;
   return `${formatDuration(Math.abs(longerMs))} ${longerMs > 0 ? 'longer' : 'shorter'}`;
+}
+
+/** "Edda, QB7TID," and "QB7TID" */
+function withComma(name: string): string {
+  return name.includes(',') ? `${name},` : name;
 }

@@ -1,0 +1,55 @@
+import { diffRevisions, type RevisionDiff } from '../../domain/activity/revision';
+import type { ActivityView } from '../../domain/activity/views';
+import type { Viewer } from '../auth/viewer';
+import type { Services } from '../services';
+import { requireEditor } from './access';
+import { activityView } from './records';
+import { loadRevision, type LoadedRevision, type StoredSlot } from './revisions';
+
+export interface DraftPage {
+  activity: ActivityView;
+  draft: LoadedRevision | null;
+  published: LoadedRevision | null;
+  /** What publishing the draft would change; null without a draft. */
+  diff: RevisionDiff<StoredSlot> | null;
+  callSigns: Map<string, string>;
+}
+
+/** The draft of an activity beside what is published. Throws `NotFound` or `Forbidden`. */
+export async function draftPage(
+  services: Services,
+  viewer: Pick<Viewer, 'id' | 'role'>,
+  slug: string,
+): Promise<DraftPage> {
+  const { db } = services;
+  const row = await requireEditor(db, viewer, slug);
+  const draft = await loadRevision(db, row.id, 'draft');
+  const published = await loadRevision(db, row.id, 'published');
+  const slots = [...(draft?.slots ?? []), ...(published?.slots ?? [])];
+  const ids = [...new Set(slots.flatMap(({ stationA, stationB }) => [stationA, stationB]))];
+  const stations =
+    ids.length === 0
+      ? []
+      : await db.selectFrom('station').select(['id', 'call_sign']).where('id', 'in', ids).execute();
+  return {
+    activity: await activityView(db, row, services.now()),
+    draft,
+    published,
+    diff: draft && diffRevisions(await standing(services, published), draft.slots),
+    callSigns: new Map(stations.map(({ id, call_sign }) => [id, call_sign])),
+  };
+}
+
+/** Published slots that were not given back. */
+async function standing({ db }: Services, published: LoadedRevision | null): Promise<StoredSlot[]> {
+  const ids = (published?.slots ?? []).flatMap(({ skedId }) => (skedId === null ? [] : [skedId]));
+  if (!published || ids.length === 0) return [];
+  const rows = await db
+    .selectFrom('sked')
+    .select('id')
+    .where('id', 'in', ids)
+    .where('state', 'in', ['agreed', 'reported'])
+    .execute();
+  const inForce = new Set(rows.map(({ id }) => id));
+  return published.slots.filter(({ skedId }) => skedId !== null && inForce.has(skedId));
+}

@@ -1,0 +1,68 @@
+import { z } from 'zod';
+import { BAND_IDS } from '../../domain/station/bands';
+import { callSignSchema, locatorSchema } from '../../domain/station/schema';
+import type { Viewer } from '../auth/viewer';
+import { inTransaction, type Tx } from '../db/transaction';
+import { InvalidInput } from '../errors';
+import { emailField } from '../people/fields';
+import { findOrMakeGuest } from '../people/guest';
+import type { Services } from '../services';
+import { requireEditor } from './access';
+import { addToRoster, type RosterEntry } from './addToRoster';
+import { mailRoster } from './mailRoster';
+import type { ActivityRow } from './records';
+
+export const guestInvitationSchema = z.object({
+  callSign: callSignSchema,
+  email: emailField,
+  locator: locatorSchema,
+  bands: z.partialRecord(z.enum(BAND_IDS), z.literal('yes')).default({}),
+});
+
+export type GuestInvitation = z.output<typeof guestInvitationSchema>;
+
+/**
+ * Puts a station without an account on the roster and writes to its operator. Throws `InvalidInput` when a listed
+ * station has the call sign, or the address cannot be written to; `NotFound`, `Forbidden` or `Conflict`.
+ */
+export async function inviteGuest(
+  services: Services,
+  viewer: Pick<Viewer, 'id' | 'role'>,
+  slug: string,
+  given: GuestInvitation,
+): Promise<{ callSign: string }> {
+  return inTransaction(services.db, async (tx) => {
+    const activity = await requireEditor(tx, viewer, slug);
+    const bands = BAND_IDS.filter((band) => given.bands[band] === 'yes');
+    const stationId = await addGuest(tx, services, activity, given, {
+      bands: bands.length > 0 ? bands : null,
+    });
+    await mailRoster(tx, services, activity, 'invitation', [stationId]);
+    return { callSign: given.callSign };
+  });
+}
+
+/** The guest's station, on the roster. Throws as `inviteGuest` does. */
+export async function addGuest(
+  tx: Tx,
+  services: Services,
+  activity: ActivityRow,
+  given: Pick<GuestInvitation, 'callSign' | 'email' | 'locator'>,
+  entry: RosterEntry,
+): Promise<string> {
+  const { callSign, email, locator } = given;
+  const registered = await tx
+    .selectFrom('station')
+    .select('id')
+    .where('call_sign', '=', callSign)
+    .where('guest', '=', 0)
+    .where('listed', '=', 1)
+    .executeTakeFirst();
+  if (registered) {
+    const message = `${callSign} is registered. Invite it from the list of stations.`;
+    throw new InvalidInput(message, [{ path: 'callSign', message }]);
+  }
+  const { stationId } = await findOrMakeGuest(tx, services, { callSign, email, locator });
+  await addToRoster(tx, services, activity, { id: stationId, callSign }, entry);
+  return stationId;
+}

@@ -1,7 +1,12 @@
 import { paths } from '../../paths';
 
-/** Pages whose address is a secret from a mail and lets its holder act without signing in. */
-const SECRET_PAGES = [paths.answer(''), paths.noMore(''), paths.rosterAnswer('')];
+/** Pages whose address is a secret from a mail and lets its holder act. */
+const SECRET_PAGES = [
+  paths.answer(''),
+  paths.noMore(''),
+  paths.rosterAnswer(''),
+  paths.joinCrew(''),
+];
 
 /** What is done on them by the secret alone; every other action goes by who is signed in. */
 const BY_SECRET =

@@ -3,6 +3,7 @@ import { drag60days } from './drag';
 import { growth } from './growth';
 import { linkPair30d } from './link';
 import { mailFaults200 } from './mailFaults';
+import { planLatency } from './planLatency';
 import { race10000 } from './race';
 import { mergeResults, printResults, type Bench } from './results';
 import { windowsPair30d } from './windowsPair30d';
@@ -15,6 +16,7 @@ const BENCHES: readonly Bench[] = [
   drag60days,
   mailFaults200,
   race10000,
+  planLatency,
 ];
 
 const filter = process.argv[2] ?? '';

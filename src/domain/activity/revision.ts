@@ -15,13 +15,14 @@ export interface RevisionSlot extends Interval {
   marginDb: number | null;
 }
 
-/** "A B 1296": the same contact in every revision, whenever it takes place. */
+/** "A B 1296": the same contact in every revision, whenever it takes place and however the roster is numbered. */
 export function slotKey({
   stationA,
   stationB,
   band,
 }: Pick<RevisionSlot, 'stationA' | 'stationB' | 'band'>): string {
-  return `${stationA} ${stationB} ${band}`;
+  const [first, second] = stationA < stationB ? [stationA, stationB] : [stationB, stationA];
+  return `${first} ${second} ${band}`;
 }
 
 export interface RevisionDiff<S extends RevisionSlot = RevisionSlot> {

@@ -1,6 +1,5 @@
 import type { RevisionSlot } from './revision';
 import type { PlanInput } from './plan/input';
-import type { Favour } from './weights';
 import type { PlanProblem, PlanProgress, PlanSlot, PlanWeights } from './plan/types';
 
 /** What is kept of a run, so that it can be replayed: all that its plan depends on. */
@@ -11,8 +10,6 @@ export interface SavedRun {
   /** Slots that have begun, of pairs whose wish is no longer there: they stay in the plan as they are. */
   begun: RevisionSlot[];
   weights: PlanWeights;
-  /** What is favoured where not every wish has room. */
-  favour: Favour;
   /** What follows from it; null until the run has begun. */
   problem: PlanProblem | null;
 }

@@ -58,7 +58,6 @@ export async function askForPlan(
         .filter((slot) => slot.startMs <= nowMs && !known.has(wishOf(slot)))
         .map(({ id: _, skedId: __, ...slot }) => slot),
       weights: planWeights(weights),
-      favour: weights.favour,
       problem: null,
     };
     const runId = newId();

@@ -127,6 +127,7 @@ async function cancelSlot(
 ): Promise<SkedRow> {
   const changed = {
     state: 'cancelled' as const,
+    agreed_version: null,
     version: sked.version + 1,
     sequence: sked.sequence + 1,
     updated_at: nowMs,

@@ -4,7 +4,6 @@ import { buildProblem } from '../../domain/activity/plan/options';
 import { PlanProblemError } from '../../domain/activity/plan/grid';
 import type { PlanProgress, PlanResult } from '../../domain/activity/plan/types';
 import type { SavedRun } from '../../domain/activity/run';
-import { favoured } from '../../domain/activity/weights';
 import type { BandId } from '../../domain/station/bands';
 import { MINUTE_MS } from '../../domain/time/interval';
 import type { PlanRunRow } from '../db/tables';
@@ -74,7 +73,7 @@ async function work(services: Services, run: PlanRunRow): Promise<void> {
     .where('id', '=', run.id)
     .execute();
   let progress: PlanProgress | null = null;
-  const running = startPlanRun(favoured(problem, saved.favour), {
+  const running = startPlanRun(problem, {
     timeLimitS: TIME_LIMIT_S,
     onProgress: (next) => {
       progress = next;

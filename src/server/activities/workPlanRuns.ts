@@ -79,6 +79,8 @@ async function work(services: Services, run: PlanRunRow): Promise<void> {
       progress = next;
     },
   });
+  // Asked while another worker had it, which died.
+  if (run.stop_asked_at !== null) running.stop();
   const beat = setInterval(() => {
     void renew(services, run.id, progress).then((stop) => {
       if (stop) running.stop();

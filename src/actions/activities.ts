@@ -6,6 +6,7 @@ import { activitySettingsSchema, nestedFields } from '../domain/activity/setting
 import { openToAll, requirePerson, requireRole } from '../server/auth/guards';
 import { askForPlan, askForPlanSchema } from '../server/activities/askForPlan';
 import { createActivity } from '../server/activities/createActivity';
+import { giveBackByLink, giveBackSchema } from '../server/activities/giveBackByLink';
 import { inviteGuest, guestInvitationSchema } from '../server/activities/inviteGuest';
 import { inviteStation } from '../server/activities/inviteStation';
 import { mailFreshLink } from '../server/activities/mailFreshLink';
@@ -130,6 +131,16 @@ export const activities = {
       const saved = await saveAnswerByLink(services(), secret, stationId, fields);
       const said = new URLSearchParams({ station: stationId, done: saved.answer });
       return { goTo: `${paths.rosterAnswer(saved.secret)}?${said.toString()}` };
+    },
+  ),
+
+  giveBackByLink: formAction(
+    giveBackSchema.extend({ secret: z.string().max(200) }),
+    async ({ secret, ...slot }, context) => {
+      openToAll(context);
+      await limitRate('link/client', clientKey(context), 30);
+      const fresh = await giveBackByLink(services(), secret, slot);
+      return { goTo: `${paths.rosterAnswer(fresh.secret)}?done=givenBack` };
     },
   ),
 

@@ -106,7 +106,8 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
       from: env.MAIL_FROM,
     },
     inbound: {
-      address: env.INBOUND_ADDRESS ?? null,
+      // In lower case, as the addresses are read to which an answer comes.
+      address: env.INBOUND_ADDRESS?.toLowerCase() ?? null,
       secret: env.INBOUND_SECRET ?? null,
       folder: env.INBOUND_FOLDER === undefined ? null : path.resolve(env.INBOUND_FOLDER),
     },

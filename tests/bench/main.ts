@@ -4,6 +4,7 @@ import { growth } from './growth';
 import { linkPair30d } from './link';
 import { plan100x1000, plan24x276, plan40x200, replan40x200 } from './plan';
 import { mailFaults200 } from './mailFaults';
+import { planLatency } from './planLatency';
 import { race10000 } from './race';
 import { mergeResults, printResults, type Bench } from './results';
 import { windowsPair30d } from './windowsPair30d';
@@ -20,6 +21,7 @@ const BENCHES: readonly Bench[] = [
   replan40x200,
   mailFaults200,
   race10000,
+  planLatency,
 ];
 
 const filter = process.argv[2] ?? '';

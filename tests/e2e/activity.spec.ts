@@ -11,7 +11,8 @@ test('a coordinator begins an activity, invites a member and somebody without an
   const roster = `${demo.url}${paths.activityRoster('quiet-moon-evening')}`;
   await test.step('Marit begins it', async () => {
     await marit.goto(`${demo.url}${paths.newActivity}`);
-    await marit.getByRole('listitem').getByRole('link').first().click();
+    const weekends = marit.getByRole('region', { name: 'Good weekends ahead' });
+    await weekends.getByRole('link').first().click();
     await marit.getByLabel('Slots begin every').selectOption('30');
     await marit.getByRole('button', { name: 'Begin the activity' }).click();
     await expect(marit.getByRole('alert')).toContainText('The title is missing.');

@@ -104,6 +104,25 @@ const PAGES: Checked[] = [
   { route: 'activities/[slug]/wishes', address: () => paths.activityWishes(DEMO), as: ['Marit'] },
   { route: 'activities/[slug]/plan', address: () => paths.activityPlan(DEMO), as: ['Marit'] },
   {
+    route: 'activities/[slug]/timetable',
+    address: () => paths.activityTimetable(DEMO),
+    as: ['Marit'],
+  },
+  { route: 'activities/[slug]/publish', address: () => paths.activityPublish(DEMO), as: ['Marit'] },
+  // plan.spec.ts looks at them with a plan in them.
+  {
+    route: 'activities/[slug]/stations/[callSign]/index',
+    address: () => paths.activityStation(DEMO, 'QA1LUN'),
+    as: ['Ylva'],
+    status: 404,
+  },
+  {
+    route: 'activities/[slug]/revisions/[number]',
+    address: () => paths.activityRevision(DEMO, 1),
+    as: ['Ylva'],
+    status: 404,
+  },
+  {
     route: 'activities/[slug]/settings',
     address: () => paths.activitySettings(DEMO),
     as: ['Marit'],

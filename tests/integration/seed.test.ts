@@ -187,8 +187,11 @@ describe('loading', () => {
     const { count } = await house.db
       .selectFrom('station')
       .select((select) => select.fn.countAll<number>().as('count'))
+      .where('guest', '=', 0)
       .executeTakeFirstOrThrow();
     expect(count).toBe(DEMO_STATIONS.length);
+    const activities = await house.db.selectFrom('activity').select('slug').execute();
+    expect(activities).toEqual([{ slug: 'two-tides-weekend' }]);
   });
 
   it('leaves a database alone that has people of its own', async () => {

@@ -49,6 +49,8 @@ export function GuestForm({ callSign: given, onChoose, onBack }: Props) {
       setFields({ ...fields, [name]: event.target.value }),
   });
   return (
+    // Inside another form, so that it cannot be one of its own: Enter in a field chooses.
+    // eslint-disable-next-line jsx-a11y/no-noninteractive-element-interactions
     <div
       className="stack"
       role="group"

@@ -15,13 +15,14 @@ export interface RevisionSlot extends Interval {
   marginDb: number | null;
 }
 
-/** "A B 1296": the same contact in every revision, whenever it takes place. */
+/** "A B 1296": the same contact in every revision, whenever it takes place and however the roster is numbered. */
 export function slotKey({
   stationA,
   stationB,
   band,
 }: Pick<RevisionSlot, 'stationA' | 'stationB' | 'band'>): string {
-  return `${stationA} ${stationB} ${band}`;
+  const [first, second] = stationA < stationB ? [stationA, stationB] : [stationB, stationA];
+  return `${first} ${second} ${band}`;
 }
 
 export interface RevisionDiff<S extends RevisionSlot = RevisionSlot> {
@@ -66,24 +67,6 @@ export function diffOfStation<S extends RevisionSlot>(
 
 export function changesAnything(diff: RevisionDiff): boolean {
   return diff.added.length + diff.removed.length + diff.moved.length > 0;
-}
-
-/** Slots of one station that overlap, as pairs; an empty list is what a plan must have. */
-export function overlapsOf<S extends RevisionSlot>(
-  slots: readonly S[],
-): { stationId: string; first: S; second: S }[] {
-  const found: { stationId: string; first: S; second: S }[] = [];
-  const byStation = new Map<string, S[]>();
-  for (const slot of inTime(slots)) {
-    for (const stationId of [slot.stationA, slot.stationB]) {
-      const earlier = byStation.get(stationId) ?? [];
-      for (const first of earlier) {
-        if (first.endMs > slot.startMs) found.push({ stationId, first, second: slot });
-      }
-      byStation.set(stationId, [...earlier, slot]);
-    }
-  }
-  return found;
 }
 
 function inTime<S extends RevisionSlot>(slots: readonly S[]): S[] {

@@ -1,3 +1,4 @@
+import type { RevisionSlot } from './revision';
 import type { PlanInput } from './plan/input';
 import type { PlanProblem, PlanProgress, PlanSlot, PlanWeights } from './plan/types';
 
@@ -6,6 +7,8 @@ export interface SavedRun {
   input: PlanInput;
   pinned: PlanSlot[];
   keep: PlanSlot[];
+  /** Slots that have begun, of pairs whose wish is no longer there: they stay in the plan as they are. */
+  begun: RevisionSlot[];
   weights: PlanWeights;
   /** What follows from it; null until the run has begun. */
   problem: PlanProblem | null;

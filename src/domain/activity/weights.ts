@@ -52,22 +52,22 @@ export const weightsSchema = record({
   leastElevationDeg: figure('The least elevation', 0, 60, '°'),
 });
 
+/** So much that the least likely contact counts more than a sure one of the next lower priority. */
+const PRIORITY_FIRST = 0.7;
+
 const FIRST_CONTACT: Record<Spread, number> = { firmly: 10, somewhat: 0.3, no: 0 };
 
 /** The weights of the plan; what stood in an earlier plan stays where it can. */
-export function planWeights({ spread }: ActivityWeights): PlanWeights {
-  return { firstContact: FIRST_CONTACT[spread], balance: spread === 'no' ? 0 : 0.01, keep: 1 };
+export function planWeights({ favour, spread }: ActivityWeights): PlanWeights {
+  return {
+    firstContact: FIRST_CONTACT[spread],
+    balance: spread === 'no' ? 0 : 0.01,
+    keep: 1,
+    ...(favour === 'priority' ? { sure: PRIORITY_FIRST } : {}),
+  };
 }
 
 /** The priority that a wish has in the plan. */
 export function planPriority(priority: PlanPriority, { favour }: ActivityWeights): PlanPriority {
   return favour === 'chance' ? 2 : priority;
-}
-
-/**
- * The chance that an option has in the plan. With priorities first, half of it is given to every start, so that the
- * chance only decides among wishes of one priority.
- */
-export function planChance(chance: number, { favour }: ActivityWeights): number {
-  return favour === 'priority' ? Math.round(50 + 50 * chance) / 100 : chance;
 }

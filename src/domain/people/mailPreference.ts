@@ -33,7 +33,6 @@ export const REMINDER_CHOICES = [
 const REMINDER_MINUTES: readonly number[] = REMINDER_CHOICES.map(({ minutes }) => minutes);
 
 export const DIGEST_RHYTHMS = ['daily', 'weekly'] as const;
-export type DigestRhythm = (typeof DIGEST_RHYTHMS)[number];
 
 export const mailPreferenceSchema = z.object({
   topics: z.object({

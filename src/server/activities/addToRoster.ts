@@ -15,7 +15,7 @@ export interface RosterEntry {
   note?: string;
 }
 
-/** Puts a station at the end of the roster. Throws `Conflict` when it is on it, or the roster is full. */
+/** Puts a station at the end of the roster. Throws `Conflict` when it is on it, the roster is full, or the activity over. */
 export async function addToRoster(
   tx: Tx,
   services: Pick<Services, 'now'>,
@@ -23,6 +23,7 @@ export async function addToRoster(
   station: { id: string; callSign: string },
   entry: RosterEntry = {},
 ): Promise<void> {
+  if (activity.end_at <= services.now()) throw new Conflict('This activity is over.');
   const places = await tx
     .selectFrom('activity_station')
     .innerJoin('station', 'station.id', 'activity_station.station_id')

@@ -3,7 +3,7 @@ import type { PlanSlot } from '../../domain/activity/plan/types';
 import type { SavedRun } from '../../domain/activity/run';
 import { planWeights } from '../../domain/activity/weights';
 import type { Viewer } from '../auth/viewer';
-import { inTransaction } from '../db/transaction';
+import { inTransaction, type Tx } from '../db/transaction';
 import { Conflict } from '../errors';
 import { newId } from '../ids';
 import type { Services } from '../services';
@@ -11,7 +11,7 @@ import { requireEditor } from './access';
 import { planInput, wishIdOf } from './planInput';
 import { newestRun } from './planRuns';
 import { activityView } from './records';
-import { loadRevision, type StoredSlot } from './revisions';
+import { loadRevision, slotsInForce, type StoredSlot } from './revisions';
 
 export const askForPlanSchema = z.object({
   /** `around`: fixed slots stand and as little as possible changes; `anew`: only what is fixed stands. */
@@ -46,16 +46,17 @@ export async function askForPlan(
     if (running && running.ended_at === null) {
       throw new Conflict('A plan is being computed already. Stop it first, or wait.');
     }
-    const base =
-      (await loadRevision(tx, activity.id, 'draft')) ??
-      (await loadRevision(tx, activity.id, 'published'));
+    const all = await standingSlots(tx, activity.id, nowMs);
     const known = new Set(input.wishes.map(({ id }) => id));
-    const slots = (base?.slots ?? []).filter((slot) => known.has(wishOf(slot)));
+    const slots = all.filter((slot) => known.has(wishOf(slot)));
     const fixed = (slot: StoredSlot) => slot.pinned || slot.startMs <= nowMs;
     const saved: SavedRun = {
       input,
       pinned: slots.filter(fixed).map(planSlot),
       keep: how === 'around' ? slots.filter((slot) => !fixed(slot)).map(planSlot) : [],
+      begun: all
+        .filter((slot) => slot.startMs <= nowMs && !known.has(wishOf(slot)))
+        .map(({ id: _, skedId: __, ...slot }) => slot),
       weights: planWeights(weights),
       problem: null,
     };
@@ -79,6 +80,19 @@ export async function askForPlan(
       .execute();
     return { runId };
   });
+}
+
+/**
+ * What a plan is computed from: the draft, else what is published and was not given back. A published slot that has
+ * begun stands, whatever the draft says of its pair.
+ */
+async function standingSlots(tx: Tx, activityId: string, nowMs: number): Promise<StoredSlot[]> {
+  const inForce = await slotsInForce(tx, activityId);
+  const draft = await loadRevision(tx, activityId, 'draft');
+  if (!draft) return inForce;
+  const begun = inForce.filter(({ startMs }) => startMs <= nowMs);
+  const pairs = new Set(begun.map(wishOf));
+  return [...begun, ...draft.slots.filter((slot) => !pairs.has(wishOf(slot)))];
 }
 
 function wishOf(slot: StoredSlot): string {

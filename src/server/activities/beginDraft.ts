@@ -3,7 +3,7 @@ import { inTransaction } from '../db/transaction';
 import { Conflict } from '../errors';
 import type { Services } from '../services';
 import { requireEditor } from './access';
-import { loadRevision, saveDraft } from './revisions';
+import { loadRevision, saveDraft, slotsInForce } from './revisions';
 
 /**
  * Begins a new revision as a copy of the published one, without the slots that were given back. What stands in it is
@@ -23,20 +23,8 @@ export async function beginDraft(
     }
     const published = await loadRevision(tx, activity.id, 'published');
     if (!published) throw new Conflict('No plan is published yet, so there is nothing to revise.');
-    const standing = new Set(
-      (
-        await tx
-          .selectFrom('sked')
-          .select('id')
-          .where('activity_id', '=', activity.id)
-          .where('state', 'in', ['agreed', 'reported'])
-          .execute()
-      ).map(({ id }) => id),
-    );
     await saveDraft(tx, activity.id, {
-      slots: published.slots
-        .filter(({ skedId }) => skedId !== null && standing.has(skedId))
-        .map(({ skedId: _, ...slot }) => slot),
+      slots: (await slotsInForce(tx, activity.id)).map(({ skedId: _, ...slot }) => slot),
       leftOutJson: published.row.left_out_json,
       runId: published.row.run_id,
       atMs: services.now(),

@@ -11,6 +11,7 @@ import { Conflict, NotFound } from '../errors';
 import type { Services } from '../services';
 import { requireEditor } from './access';
 import { draftGround, planSlotOf, type DraftGround } from './draftGround';
+import { newestRun } from './planRuns';
 import { insertSlot, type StoredSlot } from './revisions';
 
 const wishId = z
@@ -60,6 +61,10 @@ export async function changeDraft(
 ): Promise<{ version: number; slot: { chance: number | null; marginDb: number | null } | null }> {
   return inTransaction(services.db, async (tx) => {
     const activity = await requireEditor(tx, viewer, slug);
+    const run = await newestRun(tx, activity.id);
+    if (run && run.ended_at === null) {
+      throw new Conflict('A plan is being computed. Wait for it, or stop it first.');
+    }
     const ground = await draftGround(tx, activity.id);
     const { row, slots } = ground.draft;
     if (row.version !== version) {

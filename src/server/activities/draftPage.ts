@@ -4,7 +4,7 @@ import type { Viewer } from '../auth/viewer';
 import type { Services } from '../services';
 import { requireEditor } from './access';
 import { activityView } from './records';
-import { loadRevision, type LoadedRevision, type StoredSlot } from './revisions';
+import { loadRevision, slotsInForce, type LoadedRevision, type StoredSlot } from './revisions';
 
 export interface DraftPage {
   activity: ActivityView;
@@ -35,21 +35,7 @@ export async function draftPage(
     activity: await activityView(db, row, services.now()),
     draft,
     published,
-    diff: draft && diffRevisions(await standing(services, published), draft.slots),
+    diff: draft && diffRevisions(await slotsInForce(db, row.id), draft.slots),
     callSigns: new Map(stations.map(({ id, call_sign }) => [id, call_sign])),
   };
-}
-
-/** Published slots that were not given back. */
-async function standing({ db }: Services, published: LoadedRevision | null): Promise<StoredSlot[]> {
-  const ids = (published?.slots ?? []).flatMap(({ skedId }) => (skedId === null ? [] : [skedId]));
-  if (!published || ids.length === 0) return [];
-  const rows = await db
-    .selectFrom('sked')
-    .select('id')
-    .where('id', 'in', ids)
-    .where('state', 'in', ['agreed', 'reported'])
-    .execute();
-  const inForce = new Set(rows.map(({ id }) => id));
-  return published.slots.filter(({ skedId }) => skedId !== null && inForce.has(skedId));
 }

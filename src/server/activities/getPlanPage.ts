@@ -47,7 +47,7 @@ export async function getPlanPage(
     waiting: stations.filter(({ answer }) => answer === 'waiting').length,
     wishes: pairs.length,
     possible: pairs.filter(({ bands }) => bands.length > 0).length,
-    run: run ? runView(run) : null,
+    run: run ? await runView(db, run) : null,
     draft: draft
       ? {
           number: draft.row.number,

@@ -44,7 +44,7 @@ export async function previewRoster(
  */
 export async function importRoster(
   services: Services,
-  viewer: Pick<Viewer, 'id' | 'role'>,
+  viewer: Pick<Viewer, 'id' | 'role' | 'email'>,
   slug: string,
   text: string,
 ): Promise<{ imported: number; asked: number }> {
@@ -57,7 +57,7 @@ export async function importRoster(
     const offered = await offeredBands(tx, activity.id);
     const written: string[] = [];
     for (const line of lines) {
-      const stationId = await add(tx, services, activity, line);
+      const stationId = await add(tx, services, viewer, activity, line);
       if (line.coming === null) written.push(stationId);
       else await answerFor(tx, services, activity, viewer, stationId, line, offered);
     }
@@ -69,6 +69,7 @@ export async function importRoster(
 async function add(
   tx: Tx,
   services: Services,
+  viewer: Pick<Viewer, 'id' | 'email'>,
   activity: ActivityRow,
   line: ImportLine,
 ): Promise<string> {
@@ -77,7 +78,7 @@ async function add(
     if (line.kind === 'guest') {
       const { callSign, mail, locator } = line;
       const given = { callSign, email: mail!, locator: locator! };
-      return await addGuest(tx, services, activity, given, entry);
+      return await addGuest(tx, services, viewer, activity, given, entry);
     }
     const station = { id: line.stationId, callSign: line.callSign };
     await addToRoster(tx, services, activity, station, entry);

@@ -4,13 +4,17 @@ import { callSignSchema, locatorSchema } from '../../domain/station/schema';
 import type { Viewer } from '../auth/viewer';
 import { inTransaction, type Tx } from '../db/transaction';
 import { InvalidInput } from '../errors';
+import { guestSchema } from '../guests/guestSchema';
+import { guestStation } from '../guests/guestStation';
 import { emailField } from '../people/fields';
-import { findOrMakeGuest } from '../people/guest';
 import type { Services } from '../services';
 import { requireEditor } from './access';
 import { addToRoster, type RosterEntry } from './addToRoster';
 import { mailRoster } from './mailRoster';
 import type { ActivityRow } from './records';
+
+/** A coordinator fills a roster in one go. */
+const NEW_ADDRESSES_A_DAY = 200;
 
 export const guestInvitationSchema = z.object({
   callSign: callSignSchema,
@@ -27,14 +31,14 @@ export type GuestInvitation = z.output<typeof guestInvitationSchema>;
  */
 export async function inviteGuest(
   services: Services,
-  viewer: Pick<Viewer, 'id' | 'role'>,
+  viewer: Pick<Viewer, 'id' | 'role' | 'email'>,
   slug: string,
   given: GuestInvitation,
 ): Promise<{ callSign: string }> {
   return inTransaction(services.db, async (tx) => {
     const activity = await requireEditor(tx, viewer, slug);
     const bands = BAND_IDS.filter((band) => given.bands[band] === 'yes');
-    const stationId = await addGuest(tx, services, activity, given, {
+    const stationId = await addGuest(tx, services, viewer, activity, given, {
       bands: bands.length > 0 ? bands : null,
     });
     await mailRoster(tx, services, activity, 'invitation', [stationId]);
@@ -46,6 +50,7 @@ export async function inviteGuest(
 export async function addGuest(
   tx: Tx,
   services: Services,
+  viewer: Pick<Viewer, 'id' | 'email'>,
   activity: ActivityRow,
   given: Pick<GuestInvitation, 'callSign' | 'email' | 'locator'>,
   entry: RosterEntry,
@@ -62,7 +67,13 @@ export async function addGuest(
     const message = `${callSign} is registered. Invite it from the list of stations.`;
     throw new InvalidInput(message, [{ path: 'callSign', message }]);
   }
-  const { stationId } = await findOrMakeGuest(tx, services, { callSign, email, locator });
-  await addToRoster(tx, services, activity, { id: stationId, callSign }, entry);
-  return stationId;
+  const { id } = await guestStation(
+    tx,
+    services,
+    viewer,
+    guestSchema.parse({ callSign, email, locator }),
+    { band: null, field: '', newAddressesADay: NEW_ADDRESSES_A_DAY },
+  );
+  await addToRoster(tx, services, activity, { id, callSign }, entry);
+  return id;
 }

@@ -21,7 +21,7 @@ export interface GoodWeekends {
 let kept: { fromMs: number; weekends: GoodWeekends } | undefined;
 
 /** The best weekends of the half year ahead, between the two regions with the most stations in the trade. */
-export async function goodWeekends(services: Pick<Services, 'now'>): Promise<GoodWeekends> {
+export function goodWeekends(services: Pick<Services, 'now'>): GoodWeekends {
   const fromMs = Math.floor(services.now() / DAY_MS) * DAY_MS;
   if (kept?.fromMs === fromMs) return kept.weekends;
   const days = outlookDays({

@@ -1,4 +1,4 @@
-import { diffRevisions, type RevisionDiff } from '../../domain/activity/revision';
+import { diffRevisions, slotKey, type RevisionDiff } from '../../domain/activity/revision';
 import { holdsBooking } from '../../domain/sked/machine';
 import { formatUtcRange } from '../../domain/time/format';
 import type { BandId } from '../../domain/station/bands';
@@ -62,8 +62,8 @@ export async function placeSkeds(
     skeds.set(after, await moveSlot(tx, placing, after, skedOf(before), nowMs));
   }
   for (const slot of diff.added) skeds.set(slot, await agreeSlot(tx, services, placing, slot));
-  const bySlotKey = new Map(inForce.map((slot) => [key(slot), slot]));
-  for (const slot of diff.kept) skeds.set(slot, skedOf(bySlotKey.get(key(slot))!));
+  const bySlotKey = new Map(inForce.map((slot) => [slotKey(slot), slot]));
+  for (const slot of diff.kept) skeds.set(slot, skedOf(bySlotKey.get(slotKey(slot))!));
   for (const slot of placing.after) {
     await tx
       .updateTable('activity_slot')
@@ -72,10 +72,6 @@ export async function placeSkeds(
       .execute();
   }
   return { diff, skeds };
-}
-
-function key({ stationA, stationB, band }: StoredSlot): string {
-  return `${stationA} ${stationB} ${band}`;
 }
 
 async function skedsOf(tx: Tx, slots: readonly StoredSlot[]): Promise<Map<string, SkedRow>> {
@@ -100,7 +96,7 @@ async function refuseWhatCannotBe(
   }
   for (const slot of [...diff.added, ...diff.moved.map((one) => one.after)]) {
     if (slot.startMs <= nowMs) reasons.push(`${pair(slot)}, lies in the past.`);
-    const returned = before.find((old) => key(old) === key(slot) && !inForce.includes(old));
+    const returned = before.find((old) => slotKey(old) === slotKey(slot) && !inForce.includes(old));
     if (returned?.startMs === slot.startMs) {
       reasons.push(`${pair(slot)}, was given back. Choose another time or leave it out.`);
     }
@@ -131,6 +127,7 @@ async function cancelSlot(
 ): Promise<SkedRow> {
   const changed = {
     state: 'cancelled' as const,
+    agreed_version: null,
     version: sked.version + 1,
     sequence: sked.sequence + 1,
     updated_at: nowMs,

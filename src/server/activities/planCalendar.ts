@@ -7,6 +7,7 @@ import { publishedCalendar } from '../mail/templates/skedCalendar';
 import { skedFacts } from '../mail/templates/skedFacts';
 import type { Services } from '../services';
 import { partyStation } from '../skeds/load';
+import { shownLocator } from '../stations/shownLocator';
 
 export interface PlanCalendar {
   body: string;
@@ -46,7 +47,9 @@ export async function planCalendar(
           .execute();
   const wanted = callSign?.toUpperCase();
   const entries = skeds.flatMap((sked) => {
-    const stations = parties.filter(({ sked_id: id }) => id === sked.id).map(partyStation);
+    const stations = parties
+      .filter(({ sked_id: id }) => id === sked.id)
+      .map((row) => ({ ...partyStation(row), locator: shownLocator(row) }));
     if (wanted !== undefined && !stations.some((one) => one.callSign === wanted)) return [];
     const interval = { startMs: sked.start_at, endMs: sked.end_at };
     const own = wanted ?? stations[0]?.callSign ?? '';

@@ -1,5 +1,7 @@
 import { checkPlan } from '../../domain/activity/plan/check';
+import type { PlanInput } from '../../domain/activity/plan/input';
 import type { RevisionSlot } from '../../domain/activity/revision';
+import { formatUtcRange } from '../../domain/time/format';
 import type { Services } from '../services';
 import { planInput, wishIdOf } from './planInput';
 import type { ActivityRow } from './records';
@@ -15,14 +17,44 @@ export async function planFaults(
 ): Promise<string[]> {
   const nowMs = services.now();
   const input = await planInput(services, activity);
+  const wishes = new Set(input.wishes.map(({ id }) => id));
+  const coming = slots.filter(({ startMs }) => startMs > nowMs);
+  const wished = coming.filter((slot) => wishes.has(wishIdOf(slot.stationA, slot.stationB)));
+  const unwished = coming.filter((slot) => !wished.includes(slot));
   const { violations } = checkPlan(input, {
-    slots: slots
-      .filter(({ startMs }) => startMs > nowMs)
-      .map((slot) => ({
-        wishId: wishIdOf(slot.stationA, slot.stationB),
-        band: slot.band,
-        startMs: slot.startMs,
-      })),
+    slots: wished.map((slot) => ({
+      wishId: wishIdOf(slot.stationA, slot.stationB),
+      band: slot.band,
+      startMs: slot.startMs,
+    })),
   });
-  return violations.map(({ sentence }) => sentence);
+  return [
+    ...(await unwishedWords(services, input, unwished)),
+    ...violations.map(({ sentence }) => sentence),
+  ];
+}
+
+/** Of slots whose pair has no wish any more: because one of the two does not come, or because neither wants it. */
+async function unwishedWords(
+  { db }: Services,
+  { stations }: PlanInput,
+  slots: readonly RevisionSlot[],
+): Promise<string[]> {
+  if (slots.length === 0) return [];
+  const ids = [...new Set(slots.flatMap(({ stationA, stationB }) => [stationA, stationB]))];
+  const rows = await db
+    .selectFrom('station')
+    .select(['id', 'call_sign'])
+    .where('id', 'in', ids)
+    .execute();
+  const callSigns = new Map(rows.map((row) => [row.id, row.call_sign]));
+  const coming = new Set(stations.map(({ id }) => id));
+  return slots.map((slot) => {
+    const [a, b] = [slot.stationA, slot.stationB].map((id) => callSigns.get(id) ?? '');
+    const away = [slot.stationA, slot.stationB].find((id) => !coming.has(id));
+    const why = away
+      ? `${callSigns.get(away) ?? ''} is not coming any more.`
+      : 'this contact is not wished any more.';
+    return `${a} and ${b}, ${formatUtcRange(slot)}: ${why}`;
+  });
 }

@@ -4,7 +4,7 @@ import { planPriority } from '../../domain/activity/weights';
 import { wishedPairs } from '../../domain/activity/wishes';
 import type { RosterStation, RosterWish } from '../../domain/activity/views';
 import { bandById } from '../../domain/station/bands';
-import { DAY_MS, subtractIntervals } from '../../domain/time/interval';
+import { DAY_MS, subtractIntervals, type Interval } from '../../domain/time/interval';
 import type { Db } from '../db/connection';
 import type { Services } from '../services';
 import { takenIntervals } from '../skeds/takenIntervals';
@@ -15,14 +15,15 @@ import { activityView, type ActivityRow } from './records';
 /** As many contacts as fit. */
 const NO_LIMIT = 999;
 
-/** A wish of the plan is known by its pair, "A B", the first on the roster first. */
+/** A wish of the plan is known by its pair, in an order that stays when the roster is numbered anew. */
 export function wishIdOf(a: string, b: string): string {
-  return `${a} ${b}`;
+  return a < b ? `${a} ${b}` : `${b} ${a}`;
 }
 
 /**
  * Everything that a plan of the activity depends on, as it stands now: the stations that are coming with sky, hours
- * without their other agreed skeds, equipment (assumed where none is described), and their wishes.
+ * without their other agreed skeds and without the slots that they gave back, equipment (assumed where none is
+ * described), and their wishes.
  */
 export async function planInput(services: Services, activity: ActivityRow): Promise<PlanInput> {
   const { db } = services;
@@ -32,6 +33,7 @@ export async function planInput(services: Services, activity: ActivityRow): Prom
   const ids = coming.map(({ stationId }) => stationId);
   const equipment = await equipmentOf(db, ids);
   const own = await skedsOfActivity(db, activity.id);
+  const givenBack = await givenBackBy(db, activity.id);
   const inputs: PlanInputStation[] = [];
   for (const station of coming) {
     const row = rows.get(station.stationId)!;
@@ -51,7 +53,7 @@ export async function planInput(services: Services, activity: ActivityRow): Prom
         heightM: row.height_m,
       },
       sky: skyOf(row),
-      usable: subtractIntervals(station.usable, taken),
+      usable: subtractIntervals(station.usable, [...taken, ...(givenBack.get(row.id) ?? [])]),
       setups: Object.fromEntries(
         station.bands.map((band) => [
           band,
@@ -115,4 +117,22 @@ async function skedsOfActivity(db: Db, activityId: string): Promise<Set<string>>
     .where('activity_id', '=', activityId)
     .execute();
   return new Set(rows.map(({ id }) => id));
+}
+
+/** When a station gave a slot of the plan back: it is not there then, while its partner may be. */
+async function givenBackBy(db: Db, activityId: string): Promise<Map<string, Interval[]>> {
+  const rows = await db
+    .selectFrom('sked_event')
+    .innerJoin('sked', 'sked.id', 'sked_event.sked_id')
+    .select(['sked_event.station_id', 'sked.start_at', 'sked.end_at'])
+    .where('sked.activity_id', '=', activityId)
+    .where('sked.state', '=', 'cancelled')
+    .where('sked_event.kind', '=', 'cancelled')
+    .where('sked_event.station_id', 'is not', null)
+    .execute();
+  const by = new Map<string, Interval[]>();
+  for (const { station_id: id, start_at: startMs, end_at: endMs } of rows) {
+    by.set(id!, [...(by.get(id!) ?? []), { startMs, endMs }]);
+  }
+  return by;
 }

@@ -12,5 +12,5 @@ export async function planRunOf(
 ): Promise<RunView | null> {
   const activity = await requireEditor(services.db, viewer, slug);
   const row = await newestRun(services.db, activity.id);
-  return row ? runView(row) : null;
+  return row ? runView(services.db, row) : null;
 }

@@ -1,11 +1,12 @@
 import { sql } from 'kysely';
 import type { PlanView, PlanViewSlot, PlanViewStation } from '../../domain/activity/planView';
-import { cutLocator, locatorToPosition } from '../../domain/locator/locator';
+import { locatorToPosition } from '../../domain/locator/locator';
 import type { SkedResult } from '../../domain/sked/types';
 import type { Db } from '../db/connection';
 import type { SkedRow } from '../db/tables';
 import { NotFound } from '../errors';
 import type { Services } from '../services';
+import { shownLocator } from '../stations/shownLocator';
 import { loadRevision, publishedRevisions, type StoredSlot } from './revisions';
 
 /**
@@ -91,6 +92,7 @@ async function stationsOf(
       'station.name',
       'station.locator',
       'station.public_locator_length',
+      'station.guest',
       'station.time_zone',
       'activity_station.place',
     ])
@@ -105,7 +107,7 @@ async function stationsOf(
     .orderBy('activity_station.place')
     .execute();
   return rows.map((row, index) => {
-    const locator = cutLocator(row.locator, row.public_locator_length);
+    const locator = shownLocator(row);
     const { latitudeDeg, longitudeDeg } = locatorToPosition(locator);
     return {
       id: row.id,

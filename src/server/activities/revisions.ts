@@ -38,6 +38,20 @@ export async function loadRevision(
   return { row, slots: slots.map(storedSlot) };
 }
 
+/** The slots of the published revision that were not given back; none while nothing is published. */
+export async function slotsInForce(db: Db | Tx, activityId: string): Promise<StoredSlot[]> {
+  const published = await loadRevision(db, activityId, 'published');
+  if (!published) return [];
+  const rows = await db
+    .selectFrom('sked')
+    .select('id')
+    .where('activity_id', '=', activityId)
+    .where('state', 'in', ['agreed', 'reported'])
+    .execute();
+  const inForce = new Set(rows.map(({ id }) => id));
+  return published.slots.filter(({ skedId }) => skedId !== null && inForce.has(skedId));
+}
+
 /** Every revision that was published at some time, newest first. */
 export async function publishedRevisions(
   db: Db | Tx,

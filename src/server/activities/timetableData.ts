@@ -22,6 +22,7 @@ export async function timetableData(
   const { draft, saved, problem } = await draftGround(services.db, activity.id);
   const roster = await loadRoster(services.db, activity);
   const table = buildMoonTable(view);
+  const known = new Set(problem.wishes.map(({ id }) => id));
   const times: number[] = [];
   for (let at = view.startMs; at <= view.endMs; at += MOON_STEP_MINUTES * MINUTE_MS) times.push(at);
   return {
@@ -49,12 +50,15 @@ export async function timetableData(
         ),
       };
     }),
-    slots: draft.slots.map((slot) => ({
-      ...planSlotOf(slot),
-      pinned: slot.pinned,
-      chance: slot.chance,
-      marginDb: slot.marginDb,
-      begun: slot.startMs <= nowMs,
-    })),
+    // A slot that has begun, of a station that is no longer coming, stays in the plan but has no row here.
+    slots: draft.slots
+      .filter((slot) => known.has(planSlotOf(slot).wishId))
+      .map((slot) => ({
+        ...planSlotOf(slot),
+        pinned: slot.pinned,
+        chance: slot.chance,
+        marginDb: slot.marginDb,
+        begun: slot.startMs <= nowMs,
+      })),
   };
 }

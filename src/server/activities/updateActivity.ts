@@ -1,6 +1,7 @@
 import type { ActivitySettings } from '../../domain/activity/settings';
 import type { Viewer } from '../auth/viewer';
-import { inTransaction } from '../db/transaction';
+import type { ActivityBandTable } from '../db/tables';
+import { inTransaction, type Tx } from '../db/transaction';
 import { Conflict, InvalidInput } from '../errors';
 import type { Services } from '../services';
 import { requireEditor } from './access';
@@ -28,7 +29,12 @@ export async function updateActivity(
       const message = 'The dates stand still once a plan is published.';
       throw new InvalidInput(message, [{ path: 'start', message }]);
     }
-    if (row.state !== 'published') refuseProblems(settings, services.now());
+    if (row.state === 'published' && !sameBands(await bandsIn(tx, row.id), settings.bands)) {
+      const message = 'The bands stand still once a plan is published.';
+      throw new InvalidInput(message, [{ path: 'bands', message }]);
+    }
+    // The dates of a published one cannot be wrong any more, but may have passed.
+    refuseProblems(settings, row.state === 'published' ? row.start_at : services.now());
     await tx
       .updateTable('activity')
       .set({
@@ -41,4 +47,24 @@ export async function updateActivity(
     await saveBands(tx, row.id, settings);
     return { version: version + 1 };
   });
+}
+
+type Band = Pick<ActivityBandTable, 'band' | 'mode'> & { frequencyMhz: number };
+
+async function bandsIn(tx: Tx, activityId: string): Promise<Band[]> {
+  const rows = await tx
+    .selectFrom('activity_band')
+    .selectAll()
+    .where('activity_id', '=', activityId)
+    .execute();
+  return rows.map(({ band, mode, frequency_mhz: frequencyMhz }) => ({ band, mode, frequencyMhz }));
+}
+
+function sameBands(a: readonly Band[], b: readonly Band[]): boolean {
+  const text = (bands: readonly Band[]) =>
+    bands
+      .map(({ band, mode, frequencyMhz }) => `${band} ${mode} ${frequencyMhz}`)
+      .sort()
+      .join();
+  return text(a) === text(b);
 }

@@ -86,7 +86,7 @@ async function work(services: Services, run: PlanRunRow): Promise<void> {
   }, BEAT_MS);
   try {
     const result = await running.done;
-    await keep(services, run, { ...saved, problem }, result);
+    await keep(services, run, { ...saved, problem }, result, progress);
   } finally {
     clearInterval(beat);
     running.stop();
@@ -123,6 +123,7 @@ async function keep(
   run: PlanRunRow,
   saved: SavedRun,
   result: PlanResult,
+  progress: PlanProgress | null,
 ): Promise<void> {
   const { input, pinned } = saved;
   const problem = saved.problem!;
@@ -130,7 +131,7 @@ async function keep(
   const leftOut = explainLeftOut(input, plan.slots);
   const wishes = new Map(input.wishes.map((wish) => [wish.id, wish]));
   const fixed = new Set(pinned.map(({ wishId }) => wishId));
-  const slots = plan.slots.map((slot) => {
+  const computed = plan.slots.map((slot) => {
     const wish = wishes.get(slot.wishId)!;
     return {
       stationA: wish.a,
@@ -151,6 +152,7 @@ async function keep(
       .set({
         state: result.ending === 'stopped' ? 'stopped' : 'done',
         result_json: JSON.stringify(result),
+        ...(progress ? { progress_json: JSON.stringify(progress) } : {}),
         ended_at: nowMs,
         leased_until: null,
       })
@@ -160,7 +162,7 @@ async function keep(
       .executeTakeFirst();
     if (!ended) return;
     await saveDraft(tx, run.activity_id, {
-      slots,
+      slots: [...saved.begun, ...computed],
       leftOutJson: JSON.stringify(leftOut),
       runId: run.id,
       atMs: nowMs,

@@ -1,4 +1,4 @@
-import type { Generated, Insertable, Selectable } from 'kysely';
+import type { Generated, Selectable } from 'kysely';
 import type { DialConvention } from '../../domain/link/doppler';
 import type { BandId } from '../../domain/station/bands';
 import type { ModeId } from '../../domain/station/modes';
@@ -422,9 +422,7 @@ export type StationRow = Selectable<StationTable>;
 export type NoiseRecordRow = Selectable<NoiseRecordTable>;
 export type SkedRow = Selectable<SkedTable>;
 export type SkedPartyRow = Selectable<SkedPartyTable>;
-export type SkedEventRow = Selectable<SkedEventTable>;
 export type OutboxRow = Selectable<OutboxTable>;
-export type NewOutboxRow = Insertable<OutboxTable>;
 export type ActivityRow = Selectable<ActivityTable>;
 export type ActivityRevisionRow = Selectable<ActivityRevisionTable>;
 export type PlanRunRow = Selectable<PlanRunTable>;

@@ -9,17 +9,25 @@ import type { Services } from '../services';
 import type { PartyStation } from '../skeds/load';
 import type { Guest } from './guestSchema';
 
-/** Addresses to which one person may write for the first time within a day. */
+/** Addresses to which one person may write for the first time within a day, by offering skeds. */
 export const NEW_ADDRESSES_A_DAY = 20;
-/** Unanswered offers of one person to one station that has no account. */
+/** Unanswered offers of one person to one address, under whatever call sign. */
 const OPEN_OFFERS = 5;
+/** Offers of one person to one address within a day, those that were taken back too. */
+export const OFFERS_A_DAY = 10;
+
+interface Wanted {
+  /** Band of the equipment that is described, where some is. */
+  band: BandId | null;
+  /** Path of the guest in the input, for problems. */
+  field: string;
+  newAddressesADay: number;
+}
 
 /**
- * The station to which an offer to somebody without an account goes: the registered one of that call sign to whose crew
- * the address belongs, else the one described for this address and call sign before, else a new one. The answer is
- * described as the offerer described it, whichever it is, so that nothing else is learnt from it. Throws `InvalidInput`
- * for an address that cannot be written to, `TooManyRequests` after twenty new ones in a day,
- * `Conflict` while many offers wait for an answer.
+ * The station to which an offer to somebody without an account goes, described as the offerer described it, whichever
+ * it is, so that nothing else is learnt from it. Throws as `guestStation`, `TooManyRequests` after ten offers to the
+ * address in a day, and `Conflict` while many offers wait for an answer.
  */
 export async function stationForGuest(
   tx: Tx,
@@ -29,19 +37,43 @@ export async function stationForGuest(
   band: BandId,
   field: string,
 ): Promise<PartyStation> {
+  const station = await guestStation(tx, services, viewer, guest, {
+    band,
+    field,
+    newAddressesADay: NEW_ADDRESSES_A_DAY,
+  });
+  if (station.keeperId !== null) {
+    await requireFewOffers(tx, services, viewer, station.keeperId, guest.callSign);
+  }
+  return describedStation(station.id, guest);
+}
+
+/**
+ * The registered station of the call sign to whose crew the address belongs, else the one described for this address and
+ * call sign before, else a new one that the person behind the address keeps. Throws `InvalidInput` for an address that
+ * cannot be written to, `TooManyRequests` after so many new ones in a day. `keeperId`: null of a registered one.
+ */
+export async function guestStation(
+  tx: Tx,
+  services: Services,
+  viewer: Pick<Viewer, 'id' | 'email'>,
+  guest: Guest,
+  { band, field, newAddressesADay }: Wanted,
+): Promise<{ id: string; keeperId: string | null }> {
   const registered = await registeredStation(tx, guest);
-  if (registered !== null) return describedStation(registered, guest);
+  if (registered !== null) return { id: registered, keeperId: null };
+  const path = field === '' ? 'email' : `${field}.email`;
   if (guest.email === viewer.email) {
     const message = 'That is your own address.';
-    throw new InvalidInput(message, [{ path: `${field}.email`, message }]);
+    throw new InvalidInput(message, [{ path, message }]);
   }
   const person = await findPersonByEmail(tx, guest.email);
   if ((person && person.locked_at !== null) || (await isBlocked(tx, guest.email))) {
     const message = `${guest.email} cannot be written to.`;
-    throw new InvalidInput(message, [{ path: `${field}.email`, message }]);
+    throw new InvalidInput(message, [{ path, message }]);
   }
   const personId = person?.id ?? (await insertPerson(tx, services, guest));
-  await requireFewNewAddresses(tx, services, viewer, personId);
+  await requireFewNewAddresses(tx, services, viewer, personId, newAddressesADay);
   const known = await tx
     .selectFrom('station')
     .innerJoin('station_crew', 'station_crew.station_id', 'station.id')
@@ -50,9 +82,8 @@ export async function stationForGuest(
     .where('station.call_sign', '=', guest.callSign)
     .where('station_crew.person_id', '=', personId)
     .executeTakeFirst();
-  if (known) await requireFewOpenOffers(tx, services, viewer, known.id, guest.callSign);
   const id = known?.id ?? (await insertStation(tx, services, personId, guest, band));
-  return describedStation(id, guest);
+  return { id, keeperId: personId };
 }
 
 function describedStation(id: string, guest: Guest): PartyStation {
@@ -97,8 +128,9 @@ async function isBlocked(tx: Tx, email: string): Promise<boolean> {
 async function requireFewNewAddresses(
   tx: Tx,
   { now }: Services,
-  viewer: Viewer,
+  viewer: Pick<Viewer, 'id'>,
   personId: string,
+  most: number,
 ): Promise<void> {
   const firsts = await tx
     .selectFrom('guest_offer')
@@ -108,9 +140,9 @@ async function requireFewNewAddresses(
     .orderBy('first_at')
     .execute();
   if (firsts.some((first) => first.to_person_id === personId)) return;
-  if (firsts.length >= NEW_ADDRESSES_A_DAY) {
+  if (firsts.length >= most) {
     throw new TooManyRequests(
-      `You have written to ${NEW_ADDRESSES_A_DAY} new addresses within a day, which is the most. Nothing was sent.`,
+      `You have written to ${most} new addresses within a day, which is the most. Nothing was sent.`,
       Math.max(1, Math.ceil((firsts[0]!.first_at + DAY_MS - now()) / 1000)),
     );
   }
@@ -120,30 +152,48 @@ async function requireFewNewAddresses(
     .execute();
 }
 
-/** Whoever does not answer is not written to again and again. */
-async function requireFewOpenOffers(
+/** Whoever does not answer is not written to again and again, nor under other call signs, nor by offers taken back. */
+async function requireFewOffers(
   tx: Tx,
   { now }: Services,
   viewer: Viewer,
-  stationId: string,
+  personId: string,
   callSign: string,
 ): Promise<void> {
-  const open = await tx
+  const dayBefore = now() - DAY_MS;
+  const offers = await tx
     .selectFrom('sked')
     .innerJoin('sked_party', 'sked_party.sked_id', 'sked.id')
+    .innerJoin('station', 'station.id', 'sked_party.station_id')
+    .innerJoin('station_crew', 'station_crew.station_id', 'station.id')
     .innerJoin('sked_event', 'sked_event.sked_id', 'sked.id')
-    .select('sked.id')
-    .where('sked.state', '=', 'offered')
-    .where('sked.start_at', '>', now())
-    .where('sked_party.station_id', '=', stationId)
-    .where('sked_party.answer', '=', 'waiting')
+    .select(['sked.id', 'sked.state', 'sked.start_at', 'sked_party.answer', 'sked_event.at'])
+    .where('station.guest', '=', 1)
+    .where('station_crew.person_id', '=', personId)
     .where('sked_event.kind', '=', 'offered')
     .where('sked_event.person_id', '=', viewer.id)
-    .distinct()
+    .where('sked.activity_id', 'is', null)
+    .where((or) =>
+      or.or([
+        or('sked_event.at', '>', dayBefore),
+        or.and([or('sked.state', '=', 'offered'), or('sked.start_at', '>', now())]),
+      ]),
+    )
+    .orderBy('sked_event.at')
     .execute();
-  if (open.length >= OPEN_OFFERS) {
+  const open = offers.filter(
+    (offer) => offer.state === 'offered' && offer.start_at > now() && offer.answer === 'waiting',
+  );
+  if (new Set(open.map(({ id }) => id)).size >= OPEN_OFFERS) {
     throw new Conflict(
       `${callSign} has ${OPEN_OFFERS} offers of yours to answer already. Withdraw one, or wait for an answer.`,
+    );
+  }
+  const today = offers.filter((offer) => offer.at > dayBefore);
+  if (new Set(today.map(({ id }) => id)).size >= OFFERS_A_DAY) {
+    throw new TooManyRequests(
+      `You have written ${OFFERS_A_DAY} offers to ${callSign} within a day, which is the most. Nothing was sent.`,
+      Math.max(1, Math.ceil((today[0]!.at + DAY_MS - now()) / 1000)),
     );
   }
 }
@@ -173,7 +223,7 @@ async function insertStation(
   { now }: Services,
   personId: string,
   guest: Guest,
-  band: BandId,
+  band: BandId | null,
 ): Promise<string> {
   const id = newId();
   const at = now();
@@ -201,7 +251,7 @@ async function insertStation(
     .insertInto('station_crew')
     .values({ station_id: id, person_id: personId, crew_role: 'keeper', added_at: at })
     .execute();
-  if (guest.setup) {
+  if (guest.setup && band) {
     await tx
       .insertInto('station_band')
       .values({ station_id: id, band, setup_json: JSON.stringify(guest.setup) })

@@ -66,6 +66,7 @@ export async function saveLimits(
       .where('sked_party.sked_id', '=', used.skedId)
       .where('station_crew.person_id', '=', used.person.id)
       .where('station.guest', '=', 1)
+      .orderBy('sked_party.place')
       .executeTakeFirst();
     if (!station) {
       throw new NotFound('Your station is registered here. Sign in to change its limits.');

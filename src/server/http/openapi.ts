@@ -1,5 +1,5 @@
 import { OpenAPIRegistry, OpenApiGeneratorV31 } from '@asteasolutions/zod-to-openapi';
-import type { z } from 'zod';
+import { z } from 'zod';
 import { paths } from '../../paths';
 import { outlookAnswerSchema, outlookQuerySchema } from '../outlook/outlookApi';
 import {
@@ -37,6 +37,19 @@ const CALCULATORS: readonly OpenCalculator[] = [
     request: linkRequestSchema,
     answer: linkAnswerSchema,
   },
+];
+
+const PLAN_CALENDARS: readonly [path: string, summary: string, names: string[]][] = [
+  [
+    paths.activityCalendar('{slug}'),
+    'Every slot of the published plan of an activity, as a calendar to subscribe to.',
+    ['slug'],
+  ],
+  [
+    paths.activityStationCalendar('{slug}', 'CALL').replace('CALL', '{callSign}'),
+    'The slots of one station in a published plan, as a calendar to subscribe to.',
+    ['slug', 'callSign'],
+  ],
 ];
 
 const REFUSALS = {
@@ -98,6 +111,23 @@ function buildDocument(): unknown {
       ...refusals(400, 429),
     },
   });
+  for (const [path, summary, names] of PLAN_CALENDARS) {
+    registry.registerPath({
+      method: 'get',
+      path,
+      summary,
+      tags: ['Published plans'],
+      security: [],
+      request: { params: z.object(Object.fromEntries(names.map((name) => [name, z.string()]))) },
+      responses: {
+        200: {
+          description: 'An iCalendar file (RFC 5545). What was taken out stays as cancelled.',
+          content: { 'text/calendar': { schema: z.string() } },
+        },
+        404: { description: 'There is no such published plan, or no such station in it.' },
+      },
+    });
+  }
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
     info: {

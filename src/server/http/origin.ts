@@ -1,5 +1,5 @@
 import { paths } from '../../paths';
-import { isSecretPage } from './secretPages';
+import { isBySecret, isSecretPage } from './secretPages';
 
 const LOOPBACK = ['127.0.0.1', 'localhost', '[::1]'];
 
@@ -54,7 +54,7 @@ export function mayChange(
   // A mail program unsubscribes by a POST without origin and cookies (RFC 8058), and without a query.
   if (method.toUpperCase() === 'POST' && UNSUBSCRIBE.test(pathname) && search === '') return true;
   // A form on a page that tells nobody its address has the origin "null" (Fetch, 3.2).
-  if (isSecretPage(pathname) && headers.get('origin') === 'null') {
+  if (isSecretPage(pathname) && isBySecret(search) && headers.get('origin') === 'null') {
     return ['same-origin', null].includes(headers.get('sec-fetch-site'));
   }
   return isFromOwnPage(headers, publicUrl);

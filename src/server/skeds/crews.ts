@@ -2,6 +2,7 @@ import type { Db } from '../db/connection';
 import { listed } from '../db/listed';
 import type { Tx } from '../db/transaction';
 import type { SkedRecipient } from '../mail/templates/skedFacts';
+import { guestReached } from './recipients';
 
 /** Somebody in the crew of a party that is still in the sked, who can be written to. */
 export interface CrewMember extends SkedRecipient {
@@ -37,18 +38,7 @@ export async function crewsOfSkeds(
     .where('sked_party.sked_id', 'in', (ids) => ids.selectFrom(listed(skedIds)).select('value'))
     .where('sked_party.left_at', 'is', null)
     .where('person.locked_at', 'is', null)
-    .where((or) =>
-      or.or([
-        or('person.confirmed_at', 'is not', null),
-        or.and([
-          or('station.guest', '=', 1),
-          or('station_crew.crew_role', '=', 'keeper'),
-          or('person.email', 'not in', (blocked) =>
-            blocked.selectFrom('mail_block').select('email'),
-          ),
-        ]),
-      ]),
-    )
+    .where((or) => or.or([or('person.confirmed_at', 'is not', null), guestReached(or)]))
     .orderBy('person.email')
     .orderBy('sked_party.place')
     .execute();

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { hasLapsed } from '../../domain/sked/machine';
+import { hasLapsed, stillIn } from '../../domain/sked/standing';
 import { conventionsFor, settingsOpen, type SheetSettings } from '../../domain/sked/sheetSettings';
 import { DIAL_CONVENTIONS } from '../../domain/link/doppler';
 import type { Viewer } from '../auth/viewer';
@@ -38,8 +38,10 @@ export async function setSheet(
   return inTransaction(services.db, async (tx) => {
     const loaded = await loadSked(tx, skedId);
     const mine = await stationIdsOf(tx, viewer.id);
-    if (!loaded?.sked.parties.some(({ stationId }) => mine.has(stationId))) throw noSuchSked();
-    const { state, startMs, parties } = loaded.sked;
+    // Who has dropped out has no hour to come, as in `sheetOf`.
+    const parties = stillIn(loaded?.sked.parties ?? []);
+    if (!loaded || !parties.some(({ stationId }) => mine.has(stationId))) throw noSuchSked();
+    const { state, startMs } = loaded.sked;
     if (!settingsOpen(state) || hasLapsed({ state, startMs }, services.now())) {
       throw new Conflict('This sked will not be worked any more, so its sheet stays as it is.');
     }

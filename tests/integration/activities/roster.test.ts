@@ -137,7 +137,25 @@ describe('changing the settings', () => {
     await expect(
       updateActivity(services, marit, slug, 1, settings({ 'start.clock': '06:00' })),
     ).rejects.toThrow('dates stand still');
-    await updateActivity(services, marit, slug, 1, settings({ notes: 'Bring cake' }));
+    const bands = { 'bands.1296.on': 'yes' };
+    await updateActivity(services, marit, slug, 1, settings({ ...bands, notes: 'Bring cake' }));
+  });
+
+  it('leaves the bands of a published plan alone, and lets nothing through that does not fit', async () => {
+    const { services, marit } = world;
+    await services.db.updateTable('activity').set({ state: 'published' }).execute();
+    const bands = { 'bands.1296.on': 'yes' };
+    for (const [changes, sentence] of [
+      [{}, 'bands stand still'],
+      [{ ...bands, 'bands.1296.frequencyMhz': '1296.2' }, 'bands stand still'],
+      [{ ...bands, slotMinutes: '40' }, 'does not fit starts every'],
+    ] as const) {
+      await expect(updateActivity(services, marit, slug, 1, settings(changes))).rejects.toThrow(
+        sentence,
+      );
+    }
+    world.clock.nowMs = START_MS + 3 * DAY_MS;
+    await updateActivity(services, marit, slug, 1, settings({ ...bands, notes: 'It was fine' }));
   });
 });
 
@@ -191,6 +209,13 @@ describe('the roster', () => {
   it('cannot be filled with stations that are not listed, unless they are the coordinator’s', async () => {
     await world.services.db.updateTable('station').set({ listed: 0 }).execute();
     await expect(invite('QA1LUN')).rejects.toThrow(NotFound);
+  });
+
+  it('takes nobody any more once the activity is over', async () => {
+    world.clock.nowMs = START_MS + 3 * DAY_MS;
+    await expect(invite('QA1LUN')).rejects.toThrow('This activity is over.');
+    await expect(inviteGuest(world.services, world.marit, slug, GUEST)).rejects.toThrow(Conflict);
+    expect(await world.mails()).toEqual([]);
   });
 
   it('sends a guest to the list when the call sign is registered, and takes no blocked address', async () => {

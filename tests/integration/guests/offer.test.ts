@@ -4,7 +4,7 @@ import type { Interval } from '~/domain/time/interval';
 import { DAY_MS } from '~/domain/time/interval';
 import { Conflict, InvalidInput, TooManyRequests } from '~/server/errors';
 import { endMail, noMoreToken } from '~/server/guests/noMore';
-import { NEW_ADDRESSES_A_DAY } from '~/server/guests/guestStation';
+import { NEW_ADDRESSES_A_DAY, OFFERS_A_DAY } from '~/server/guests/guestStation';
 import { getSked } from '~/server/skeds/getSked';
 import { skedOfferSchema } from '~/server/skeds/schemas';
 import { listMyStations } from '~/server/stations/listMyStations';
@@ -170,6 +170,34 @@ describe('refusals', () => {
   it('lets five offers of one person wait for one station', async () => {
     for (let count = 0; count < 5; count += 1) await offerToGuest(world, slot(30 + count));
     await expect(offerToGuest(world, slot(90))).rejects.toBeInstanceOf(Conflict);
+  });
+
+  it('counts the offers to an address, under whatever call sign', async () => {
+    for (let count = 0; count < 5; count += 1) {
+      await offerToGuest(world, slot(30 + count), { callSign: `QZ9N${'ABCDE'[count]}` });
+    }
+    await expect(offerToGuest(world, slot(90), { callSign: 'QZ9NF' })).rejects.toThrow(
+      'QZ9NF has 5 offers of yours to answer already',
+    );
+  });
+
+  it('counts those that were taken back too, and the moves of one', async () => {
+    const { withdrawSked } = await import('~/server/skeds/withdrawSked');
+    const { moveSked, MOVES_A_DAY } = await import('~/server/skeds/moveSked');
+    for (let count = 0; count < OFFERS_A_DAY - 1; count += 1) {
+      const { id, version } = await offerToGuest(world, slot(30 + count));
+      await withdrawSked(world.services, ylva(), id, { version, words: '' });
+    }
+    const { id } = await offerToGuest(world, slot(60));
+    await expect(offerToGuest(world, slot(61))).rejects.toThrow(TooManyRequests);
+    const move = (count: number) => {
+      const { startMs: start, endMs: end } = slot(30 + count);
+      return moveSked(world.services, ylva(), id, { version: count, start, end, words: '' });
+    };
+    for (let count = 1; count <= MOVES_A_DAY; count += 1) await move(count);
+    await expect(move(MOVES_A_DAY + 1)).rejects.toThrow(TooManyRequests);
+    world.clock.nowMs += DAY_MS + 1;
+    await expect(move(MOVES_A_DAY + 1)).rejects.toThrow(Conflict);
   });
 
   it('refuses the own address, the same call sign twice, and what is no address', async () => {

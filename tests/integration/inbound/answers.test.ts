@@ -275,6 +275,14 @@ describe('answers in words', () => {
     expect(told.map((mail) => mail.recipient).sort()).toEqual([emailOf(A), emailOf(C)].sort());
   });
 
+  it('find their sked however the address is spelt in the settings', async () => {
+    await world.close();
+    world = await newWorld({ INBOUND_ADDRESS: 'Replies@Echotide.example' });
+    const { id } = await offerFrom(world, A, [B], slotIn(window, 10));
+    const raw = wordsMail({ from: emailOf(B), to: await addressOf(B, id), text: 'Gern.' });
+    expect(await receiveMail(world.services, raw)).toBe('message');
+  });
+
   it('come back with the reason when they are too long', async () => {
     const { id } = await offerFrom(world, A, [B], slotIn(window, 10));
     const mails = await world.mails();

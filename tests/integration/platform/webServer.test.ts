@@ -124,12 +124,11 @@ describe('drain', () => {
     await (await fetch(`http://127.0.0.1:${port}/first`)).text();
     const slow = fetch(`http://127.0.0.1:${port}/slow`).then((response) => response.text());
     await new Promise((resolve) => setTimeout(resolve, 150));
-    const drained = drain(server!, 5000);
+    // Far longer than this test may take: it ends by itself.
+    const drained = drain(server!, 600_000);
     await expect(fetch(`http://127.0.0.1:${port}/late`)).rejects.toThrow();
     expect(await slow).toBe('/slow');
-    const startedAt = performance.now();
     await drained;
-    expect(performance.now() - startedAt).toBeLessThan(2000);
   });
 
   it('is not held up by a body that nobody reads', async () => {
@@ -145,9 +144,8 @@ describe('drain', () => {
     socket.write('POST / HTTP/1.1\r\nHost: x\r\nTransfer-Encoding: chunked\r\n\r\n64\r\n');
     socket.write('x'.repeat(100));
     await once(socket, 'data');
-    const startedAt = performance.now();
-    await drain(server!, 10_000);
-    expect(performance.now() - startedAt).toBeLessThan(3000);
+    // Far longer than this test may take: it ends by itself.
+    await drain(server!, 600_000);
     socket.destroy();
   });
 

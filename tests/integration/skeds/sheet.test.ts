@@ -2,6 +2,7 @@ import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { Conflict, InvalidInput, NotFound } from '~/server/errors';
 import { acceptSked } from '~/server/skeds/acceptSked';
 import { declineSked } from '~/server/skeds/declineSked';
+import { dropOutSked } from '~/server/skeds/dropOutSked';
 import { setSheet } from '~/server/skeds/setSheet';
 import { sheetOf } from '~/server/skeds/sheetOf';
 import { skedTrack } from '~/server/skeds/skedTrack';
@@ -77,6 +78,15 @@ describe('what all parties see alike', () => {
     await expect(refused).rejects.toThrow(InvalidInput);
     await set(C, false, 'receiveOnly', three.id);
     expect((await seenBy(B, three.id)).sked.convention).toBe('receiveOnly');
+  });
+
+  it('is set by those who are still in it, as two when one of three has dropped out', async () => {
+    const three = await offerFrom(world, A, [B, C], slotIn(commonWindows([A, B, C]).at(-1)!, 5));
+    await dropOutSked(world.services, world.people[C]!, three.id, { version: 1, words: '' });
+    await expect(set(C, false, 'receiveOnly', three.id)).rejects.toThrow(NotFound);
+    const settings = { eastFirst: false, convention: 'firstCorrectsAll' as const };
+    await setSheet(world.services, world.people[A]!, three.id, settings);
+    expect((await seenBy(B, three.id)).sked).toMatchObject(settings);
   });
 });
 

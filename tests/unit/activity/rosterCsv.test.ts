@@ -79,12 +79,10 @@ describe('a roster file', () => {
     expect(problems[0]?.message).toMatch(message);
   });
 
-  it('refuses a line of a megabyte at once', () => {
-    const began = performance.now();
+  it('refuses a line of a megabyte', () => {
     const { lines, problems } = read(`${HEAD}\nQA1LUN,,,,,,${'x'.repeat(1_000_000)}`);
     expect(lines).toEqual([]);
     expect(problems[0]?.message).toMatch(/longer than 8000 characters/);
-    expect(performance.now() - began).toBeLessThan(500);
     expect(read('x'.repeat(1_000_000)).problems[0]?.message).toMatch(/longer than 8000/);
   });
 

@@ -101,7 +101,7 @@ describe('mayChange', () => {
 
 describe('pages whose address is a secret', () => {
   it('take the origin "null" of their own forms, and nobody else does', () => {
-    for (const page of ['/answer/secret', '/answer/secret/move', '/no-more/token']) {
+    for (const page of ['/answer/secret', '/answer/secret/move', '/roster/secret']) {
       expect(asks('POST', { origin: 'null' }, page)).toBe(true);
       expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'same-origin' }, page)).toBe(true);
       expect(asks('POST', { origin: 'null', 'sec-fetch-site': 'cross-site' }, page)).toBe(false);
@@ -109,6 +109,18 @@ describe('pages whose address is a secret', () => {
     }
     expect(asks('POST', { origin: 'null' })).toBe(false);
     expect(asks('POST', {}, '/answer/secret')).toBe(false);
+    // What a cookie allows is not done there on nobody's word.
+    for (const [action, taken] of [
+      ['guests.accept', true],
+      ['activities.answerByLink&station=x', true],
+      ['guests.offer', false],
+      ['people.signOutEverywhere', false],
+      ['activities.publish', false],
+    ] as const) {
+      const query = `?_action=${action}`;
+      expect(asks('POST', { origin: 'null' }, '/answer/secret', query), action).toBe(taken);
+      expect(asks('POST', { origin: PUBLIC }, '/answer/secret', query), action).toBe(true);
+    }
     expect(asks('POST', {}, '/no-more/token')).toBe(true);
     expect(asks('POST', {}, '/no-more/token', '?_action=people.signIn')).toBe(false);
   });

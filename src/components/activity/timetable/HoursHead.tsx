@@ -1,9 +1,9 @@
 import { formatDay } from '../../../domain/time/format';
 import { DAY_MS, HOUR_MS, type Interval } from '../../../domain/time/interval';
-import { hourLines, widthOf, xOf } from './geometry';
+import { hourLines, widthOf, xOf, type Span } from './geometry';
 
 interface Props {
-  span: Interval;
+  span: Span;
   /** The slot that is held, and its time in words. */
   flag: (Interval & { text: string }) | null;
 }

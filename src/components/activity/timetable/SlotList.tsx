@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import type { TimetableView } from '../../../domain/activity/timetableView';
 import { bandById, type BandId } from '../../../domain/station/bands';
 import { formatUtcRange } from '../../../domain/time/format';
@@ -11,7 +12,7 @@ interface Props {
 }
 
 /** The same plan as a list of slots by station: on a phone instead of the table. */
-export function SlotList({ view, chosen, onChoose }: Props) {
+export const SlotList = memo(function SlotList({ view, chosen, onChoose }: Props) {
   return (
     <div className="tt-list">
       {view.stations.map((station, index) => {
@@ -50,4 +51,4 @@ export function SlotList({ view, chosen, onChoose }: Props) {
       })}
     </div>
   );
-}
+});

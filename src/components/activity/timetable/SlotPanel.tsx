@@ -23,11 +23,19 @@ export function SlotPanel({ view, wishId, heldMs, nowMs, change }: Props) {
   const slot = slotOfWish(view, wishId);
   const free = useMemo(() => freePlaces(view, wishId, nowMs), [view, wishId, nowMs]);
   const [wanted, setWanted] = useState('');
+  const options = useMemo(
+    () =>
+      free.map(({ band, startMs, chance: of }) => (
+        <option key={valueOf(band, startMs)} value={valueOf(band, startMs)}>
+          {`${formatUtc(startMs)}, ${labelOf(band)}, ${Math.round(100 * of)} in 100`}
+        </option>
+      )),
+    [free],
+  );
   const { problem } = view;
   const { first, second } = pairOf(problem, wishId);
   const stations = [view.stations[first]!, view.stations[second]!];
   const shownMs = heldMs ?? slot?.startMs ?? null;
-  const valueOf = (band: string, startMs: number) => `${band} ${startMs}`;
   const place = free.find(({ band, startMs }) => valueOf(band, startMs) === wanted);
   const chance =
     shownMs === null
@@ -81,18 +89,17 @@ export function SlotPanel({ view, wishId, heldMs, nowMs, change }: Props) {
         <div className="tt-panel__do">
           {free.length > 0 ? (
             <div className="field">
-              <label htmlFor="tt-start">{slot ? 'Move it to' : 'Put it at'}</label>
+              <label className="field__label" htmlFor="tt-start">
+                {slot ? 'Move it to' : 'Put it at'}
+              </label>
               <select
                 id="tt-start"
+                className="field__control"
                 value={place ? wanted : ''}
                 onChange={(event) => setWanted(event.target.value)}
               >
                 <option value="">Choose a start</option>
-                {free.map(({ band, startMs, chance: of }) => (
-                  <option key={valueOf(band, startMs)} value={valueOf(band, startMs)}>
-                    {`${formatUtc(startMs)}, ${labelOf(band)}, ${Math.round(100 * of)} in 100`}
-                  </option>
-                ))}
+                {options}
               </select>
             </div>
           ) : (
@@ -112,10 +119,7 @@ export function SlotPanel({ view, wishId, heldMs, nowMs, change }: Props) {
             ) : null}
             {slot ? (
               <>
-                <Button
-                  onClick={() => change({ kind: 'pin', wishId, pinned: !slot.pinned })}
-                  aria-pressed={slot.pinned}
-                >
+                <Button onClick={() => change({ kind: 'pin', wishId, pinned: !slot.pinned })}>
                   {slot.pinned ? 'Let it move' : 'Fix it'}
                 </Button>
                 <Button look="harmful" onClick={() => change({ kind: 'remove', wishId })}>
@@ -161,6 +165,10 @@ function Blocked({ view, wishId }: { view: TimetableView; wishId: string }) {
       </ul>
     </div>
   );
+}
+
+function valueOf(band: string, startMs: number): string {
+  return `${band} ${startMs}`;
 }
 
 function labelOf(band: string): string {

@@ -1,25 +1,37 @@
+import type { PlanProblem } from '../../../domain/activity/plan/types';
 import { MOON_STEP_MINUTES } from '../../../domain/activity/timetableView';
 import { HOUR_MS, MINUTE_MS, type Interval } from '../../../domain/time/interval';
 
-export const HOUR_PX = 18.6;
+const LEAST_HOUR_PX = 18.6;
+/** So wide a slot has room for a partner's number of two digits. */
+const LEAST_SLOT_PX = 16;
 export const ROW_PX = 38;
 /** Elevation that fills the row's height. */
-const TOP_DEG = 75;
+const TOP_DEG = 90;
 
-export function xOf(span: Interval, atMs: number): number {
-  return Math.round(((atMs - span.startMs) / HOUR_MS) * HOUR_PX * 10) / 10;
+/** The stretch of time that the table shows, and how wide an hour is drawn. */
+export interface Span extends Interval {
+  hourPx: number;
 }
 
-export function widthOf(span: Interval): number {
+/** Hours are as narrow as slots can be read: a weekend of long slots fits a desk, short ones scroll sideways. */
+export function spanOf(
+  { startMs, endMs }: Interval,
+  { slotMinutes }: Pick<PlanProblem, 'slotMinutes'>,
+): Span {
+  return { startMs, endMs, hourPx: Math.max(LEAST_HOUR_PX, (LEAST_SLOT_PX * 60) / slotMinutes) };
+}
+
+export function xOf(span: Span, atMs: number): number {
+  return Math.round(((atMs - span.startMs) / HOUR_MS) * span.hourPx * 10) / 10;
+}
+
+export function widthOf(span: Span): number {
   return xOf(span, span.endMs);
 }
 
-export function timeAt(span: Interval, x: number): number {
-  return span.startMs + (x / HOUR_PX) * HOUR_MS;
-}
-
 /** The Moon's height as a low hill over the row's foot; empty while it is down. */
-export function hillPath(span: Interval, elevationDeg: readonly number[]): string {
+export function hillPath(span: Span, elevationDeg: readonly number[]): string {
   const points = elevationDeg.map((degrees, step) => {
     const x = xOf(span, span.startMs + step * MOON_STEP_MINUTES * MINUTE_MS);
     const share = Math.min(1, Math.max(0, degrees) / TOP_DEG);
@@ -31,7 +43,7 @@ export function hillPath(span: Interval, elevationDeg: readonly number[]): strin
 
 /** Whole UTC hours of the activity, each with how strong its line is. */
 export function hourLines(
-  span: Interval,
+  span: Span,
 ): { x: number; atMs: number; line: 'day' | 'three' | 'hour' }[] {
   const lines: { x: number; atMs: number; line: 'day' | 'three' | 'hour' }[] = [];
   const firstMs = Math.ceil(span.startMs / HOUR_MS) * HOUR_MS;

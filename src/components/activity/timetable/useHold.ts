@@ -8,7 +8,7 @@ import {
 } from 'react';
 import type { TimetableSlot, TimetableView } from '../../../domain/activity/timetableView';
 import { HOUR_MS } from '../../../domain/time/interval';
-import { HOUR_PX } from './geometry';
+import { spanOf } from './geometry';
 import { freePlaces, type Change } from './model';
 
 /** A slot that is held, by pointer or keyboard: where it may go, and where it would go now. */
@@ -69,6 +69,11 @@ export function useHold(
       if (slot.begun || event.button !== 0) return;
       const element = event.currentTarget;
       const { pointerId, clientX: fromX } = event;
+      const shown = current.current.view;
+      if (!shown) return;
+      const { hourPx } = spanOf(shown, shown.problem);
+      // At once: a slot is so narrow that the pointer has left it before it was moved far enough.
+      element.setPointerCapture(pointerId);
       let lifted = false;
       const move = (at: globalThis.PointerEvent) => {
         if (at.pointerId !== pointerId) return;
@@ -76,12 +81,15 @@ export function useHold(
         if (!lifted) {
           if (Math.abs(byPx) < BEGIN_PX) return;
           lifted = true;
-          element.setPointerCapture(pointerId);
           setHeld({ slot, starts: startsOf(slot), targetMs: slot.startMs, by: 'pointer' });
           return;
         }
-        const wishedMs = slot.startMs + (byPx / HOUR_PX) * HOUR_MS;
-        setHeld((now) => now && { ...now, targetMs: nearest(now.starts, wishedMs) });
+        const wishedMs = slot.startMs + (byPx / hourPx) * HOUR_MS;
+        setHeld((now) => {
+          if (!now) return now;
+          const targetMs = nearest(now.starts, wishedMs);
+          return targetMs === now.targetMs ? now : { ...now, targetMs };
+        });
       };
       const end = (at: globalThis.PointerEvent) => {
         if (at.pointerId !== pointerId) return;

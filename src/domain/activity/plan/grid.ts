@@ -23,7 +23,7 @@ export interface PlanGrid {
   readonly optionWish: Int32Array;
   readonly optionBand: Int32Array;
   readonly optionStep: Int32Array;
-  /** Worth and what is added for keeping. */
+  /** Worth, with what of the priority counts whatever the chance, and what is added for keeping. */
   readonly optionValue: Int32Array;
   /** Priority × chance alone. */
   readonly optionWorth: Int32Array;
@@ -59,6 +59,7 @@ export function layGrid(problem: PlanProblem): PlanGrid {
   const pinnedSlots = new Map(problem.pinned.map((pin) => [pin.wishId, pin]));
   const keep = new Map(problem.keep.map((kept) => [kept.wishId, kept]));
   const taken = takenByPins(problem, bandIndex, stepOf);
+  const { sure = 0 } = problem.weights;
   const wishes = problem.wishes.length;
   const firsts = new Int32Array(wishes + 1);
   const pinned = new Int32Array(wishes).fill(-1);
@@ -69,12 +70,13 @@ export function layGrid(problem: PlanProblem): PlanGrid {
     const kept = keep.get(wish.id);
     const lay = (option: PlanSlot & { chance: number }) => {
       const worth = Math.round(wish.priority * option.chance * UNITS);
+      const sought = Math.round(wish.priority * (sure + (1 - sure) * option.chance) * UNITS);
       const same = kept?.band === option.band && kept.startMs === option.startMs;
       rows.push({
         wish: index,
         band: bandIndex.get(option.band)!,
         step: stepOf(option.startMs),
-        value: worth + (same ? Math.round(problem.weights.keep * UNITS) : 0),
+        value: sought + (same ? Math.round(problem.weights.keep * UNITS) : 0),
         worth,
       });
     };

@@ -59,6 +59,8 @@ export interface PlanWeights {
   balance: number;
   /** For every slot that stands as it stood in the earlier plan. */
   keep: number;
+  /** Share of a wish's priority that counts at every start, whatever its chance; absent: none. */
+  sure?: number;
 }
 
 export const PLAN_WEIGHTS: PlanWeights = { firstContact: 0.1, balance: 0.01, keep: 1 };

@@ -52,6 +52,8 @@ export interface MipAnswer {
 }
 
 export interface MipControl extends HighsControl {
+  /** Nodes of the tree after which to give up; absent: none. */
+  mostNodes?: number;
   /** Ends when no more than this is between the best plan and the bound. */
   within: number;
   onSolution: (columns: Float64Array) => void;
@@ -75,6 +77,7 @@ export function solveMip(
       mip_abs_gap: control.within,
       time_limit: control.timeLimitS,
     });
+    if (control.mostNodes !== undefined) instance.options.set('mip_max_nodes', control.mostNodes);
     instance.setSolution({ colValue: start });
     const types = highs.constants.callbackType;
     const result = instance.run({

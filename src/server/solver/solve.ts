@@ -1,9 +1,4 @@
-import {
-  PROVEN_WITHIN_UNITS,
-  fitsTogether,
-  gapOf,
-  planOf,
-} from '../../domain/activity/plan/answer';
+import { PROVEN_WITHIN_UNITS, fitsTogether, planOf } from '../../domain/activity/plan/answer';
 import { Board } from '../../domain/activity/plan/board';
 import { greedyBoard } from '../../domain/activity/plan/greedy';
 import { layGrid, type PlanGrid } from '../../domain/activity/plan/grid';
@@ -14,6 +9,7 @@ import {
   type DualBound,
   type PlanRow,
 } from '../../domain/activity/plan/model';
+import { neighbourhood, openNeighbourhoods } from '../../domain/activity/plan/neighbourhood';
 import { oddCuts } from '../../domain/activity/plan/oddCuts';
 import { Prices } from '../../domain/activity/plan/prices';
 import {
@@ -24,26 +20,9 @@ import {
 } from '../../domain/activity/plan/reduce';
 import { restCuts } from '../../domain/activity/plan/restCuts';
 import { anneal } from '../../domain/activity/plan/search';
-import type {
-  Plan,
-  PlanPhase,
-  PlanProblem,
-  PlanProgress,
-  PlanResult,
-} from '../../domain/activity/plan/types';
+import type { PlanProblem, PlanResult } from '../../domain/activity/plan/types';
 import { solveMip, solveRelaxation, type Highs } from './highs';
-
-export interface SolveControl {
-  /** Milliseconds on any clock that only goes forward. */
-  nowMs: () => number;
-  stop: () => boolean;
-  onProgress: (progress: PlanProgress, plan: () => Plan) => void;
-  timeLimitS: number;
-  /** Ends once the gap is no greater. */
-  gapGoal: number;
-  /** Units within which a plan counts as proven; absent: PROVEN_WITHIN_UNITS. */
-  provenWithin?: number;
-}
+import { SoFar, type SolveControl } from './soFar';
 
 /** Up to so many options the relaxation is solved before anything else is tried for long. */
 const SMALL = 12_000;
@@ -54,7 +33,10 @@ const HEATS = [
   [800, 50],
 ] as const;
 const PRICE_ROUNDS = 50;
+/** Rounds of rows added to the relaxation. */
 const CUT_ROUNDS = 30;
+/** A hard stop only: the number of nodes ends a neighbourhood. */
+const NEIGHBOURHOOD_S = 10;
 
 /**
  * Plans in stages, the best plan and the best bound carried from one to the next: first fit, annealing, prices, the
@@ -66,11 +48,8 @@ export function solvePlan(highs: Highs, problem: PlanProblem, control: SolveCont
 }
 
 class Solver {
-  readonly #startMs: number;
   readonly #grid: PlanGrid;
-  #best: Int32Array;
-  #value = -Infinity;
-  #bound = Infinity;
+  readonly #soFar: SoFar;
   #inQuestion: ReducedGrid;
   /** About the options in question. */
   #proof: DualBound | null = null;
@@ -83,24 +62,24 @@ class Solver {
     problem: PlanProblem,
     readonly control: SolveControl,
   ) {
-    this.#startMs = control.nowMs();
+    const startMs = control.nowMs();
     this.#grid = layGrid(problem);
-    this.#best = new Int32Array(this.#grid.wishes).fill(-1);
+    this.#soFar = new SoFar(this.#grid, control, startMs);
     const all = Int32Array.from(this.#grid.optionWish, (_, option) => option);
     this.#inQuestion = { grid: this.#grid, options: all };
   }
 
   run(): PlanResult {
     const greedy = greedyBoard(this.#grid);
-    this.#take(greedy.chosen, 'greedy');
-    const first = planOf(this.#grid, this.#best, null);
+    this.#soFar.take(greedy.chosen, 'greedy');
+    const first = planOf(this.#grid, this.#soFar.best, null);
     this.#stages();
-    const plan = this.#plan();
-    this.#report('done');
+    const plan = this.#soFar.plan();
+    this.#soFar.report('done');
     return {
       plan,
-      ending: this.#ending(plan),
-      elapsedMs: this.#elapsedMs(),
+      ending: this.#soFar.ending(plan),
+      elapsedMs: this.#soFar.elapsedMs(),
       greedy: { placed: first.slots.length, worth: first.worth, objective: first.objective },
     };
   }
@@ -108,63 +87,91 @@ class Solver {
   #stages(): void {
     const options = this.#grid.optionWish.length;
     if (options === 0) {
-      this.#lower(this.#value, 'bound');
+      this.#soFar.lower(this.#soFar.value, 'bound');
       return;
     }
     this.#anneal(2000, 200, moves(options, 100_000) + 20 * options);
+    this.#price(options > SMALL ? 1500 : 100);
     if (options > SMALL) {
-      this.#price(1500);
-      for (let round = 0; round < 4 && !this.#over(); round += 1) {
+      for (let round = 0; round < 4 && !this.#soFar.over(); round += 1) {
         this.#anneal(3000, 50, 120 * options);
       }
+      this.#neighbours();
     }
     this.#relax();
     let idle = 0;
-    for (let round = 0; round < 8 && idle < 3 && !this.#over(); round += 1) {
+    for (let round = 0; round < 8 && idle < 3 && !this.#soFar.over(); round += 1) {
       this.#reduce();
-      const before = this.#value;
+      const before = this.#soFar.value;
       const left = this.#inQuestion.options.length;
       const [from, to] = HEATS[round % HEATS.length]!;
       this.#anneal(from, to, moves(left, 200_000) + 100 * left);
-      idle = this.#value > before ? 0 : idle + 1;
+      idle = this.#soFar.value > before ? 0 : idle + 1;
     }
+    this.#neighbours();
     this.#branch();
   }
 
+  /** Solves the surroundings of each wish that is left out exactly, the rest as it stands. */
+  #neighbours(): void {
+    this.#reduce();
+    const { grid } = this.#inQuestion;
+    const around = openNeighbourhoods(grid, intoReduced(this.#inQuestion, this.#soFar.best));
+    for (const free of around) {
+      if (this.#soFar.over()) return;
+      const chosen = intoReduced(this.#inQuestion, this.#soFar.best);
+      const near = neighbourhood(grid, chosen, free);
+      const board = new Board(near.grid);
+      board.load(intoReduced(near, chosen));
+      const model = planModel(near.grid);
+      const { columns } = solveMip(this.highs, model, columnsOf(model, board), {
+        timeLimitS: Math.min(this.#soFar.leftS(), NEIGHBOURHOOD_S),
+        mostNodes: 20,
+        within: 1,
+        stop: () => this.#soFar.cut(),
+        onSolution: () => undefined,
+        onBound: () => undefined,
+      });
+      const found = columns && chosenOf(near.grid, columns);
+      if (!found || !fitsTogether(near.grid, found)) continue;
+      this.#soFar.take(outOfReduced(this.#inQuestion, outOfReduced(near, found)), 'search');
+    }
+  }
+
   #anneal(fromUnits: number, toUnits: number, moves: number): void {
-    if (this.#over()) return;
+    if (this.#soFar.over()) return;
     const { grid } = this.#inQuestion;
     const board = new Board(grid);
-    board.load(intoReduced(this.#inQuestion, this.#best));
-    anneal(board, { seed: this.#seed, fromUnits, toUnits, moves, stop: () => this.#cut() });
+    board.load(intoReduced(this.#inQuestion, this.#soFar.best));
+    anneal(board, { seed: this.#seed, fromUnits, toUnits, moves, stop: () => this.#soFar.cut() });
     this.#seed += 1;
-    this.#take(outOfReduced(this.#inQuestion, board.chosen), 'search');
+    this.#soFar.take(outOfReduced(this.#inQuestion, board.chosen), 'search');
   }
 
   #price(rounds: number): void {
     const prices = new Prices(this.#inQuestion.grid);
-    for (let done = 0; done < rounds && !this.#over(); done += PRICE_ROUNDS) {
-      prices.improve(PRICE_ROUNDS, this.#value);
-      this.#lower(prices.bound, 'bound');
+    for (let done = 0; done < rounds && !this.#soFar.over(); done += PRICE_ROUNDS) {
+      prices.improve(PRICE_ROUNDS, this.#soFar.value);
+      this.#soFar.lower(prices.bound, 'bound');
     }
     this.#prove(prices.proof());
   }
 
   /** The linear relaxation, with rows added that it breaks and no plan does. */
   #relax(): void {
-    if (this.#over()) return;
+    if (this.#soFar.over()) return;
     this.#reduce();
     const { grid } = this.#inQuestion;
     const model = planModel(grid);
     const rows = model.rows.length;
     let rounds = 0;
     solveRelaxation(this.highs, model, {
-      timeLimitS: this.#leftS(),
-      stop: () => this.#cut(),
+      timeLimitS: this.#soFar.leftS(),
+      stop: () => this.#soFar.cut(),
       onRound: (columns, duals) => {
         this.#prove(dualBound(model, duals));
         rounds += 1;
-        return this.#over() || rounds > CUT_ROUNDS ? [] : oddCuts(grid, columns);
+        return this.#soFar.over() || rounds > CUT_ROUNDS ? [] : oddCuts(grid, columns);
       },
     });
     this.#cuts = model.rows.slice(rows);
@@ -173,16 +180,16 @@ class Solver {
   /** Takes a proof about the options in question. */
   #prove(proof: DualBound): void {
     if (!this.#proof || proof.bound < this.#proof.bound) this.#proof = proof;
-    this.#lower(proof.bound, 'bound');
+    this.#soFar.lower(proof.bound, 'bound');
   }
 
   /** Leaves only options that could stand in a better plan, and those of the best one. */
   #reduce(): void {
     const proof = this.#proof;
     if (!proof) return;
-    const slack = proof.bound - this.#value;
+    const slack = proof.bound - this.#soFar.value;
     const before = this.#inQuestion;
-    const inside = new Set(intoReduced(before, this.#best));
+    const inside = new Set(intoReduced(before, this.#soFar.best));
     const places = Int32Array.from(before.options, (_, place) => place).filter(
       (place) => proof.loss[place]! <= slack || inside.has(place),
     );
@@ -201,102 +208,38 @@ class Solver {
 
   /** Branch and bound; runs that are too long for a pause are cut off as they appear. */
   #branch(): void {
-    while (!this.#over()) {
+    while (!this.#soFar.over()) {
       this.#reduce();
       const { grid } = this.#inQuestion;
       const model = planModel(grid);
       model.rows.push(...this.#cuts);
       const board = new Board(grid);
-      board.load(intoReduced(this.#inQuestion, this.#best));
+      board.load(intoReduced(this.#inQuestion, this.#soFar.best));
       const answer = solveMip(this.highs, model, columnsOf(model, board), {
-        timeLimitS: this.#leftS(),
+        timeLimitS: this.#soFar.leftS(),
         within: (this.control.provenWithin ?? PROVEN_WITHIN_UNITS) / 2,
-        stop: () => this.#cut(),
+        stop: () => this.#soFar.cut(),
         onSolution: (columns) => {
           const chosen = chosenOf(grid, columns);
           if (chosen && fitsTogether(grid, chosen)) {
-            this.#take(outOfReduced(this.#inQuestion, chosen), 'proof');
+            this.#soFar.take(outOfReduced(this.#inQuestion, chosen), 'proof');
           }
         },
         onBound: (bound) => {
-          this.#lower(bound, 'proof');
+          this.#soFar.lower(bound, 'proof');
         },
       });
-      this.#lower(answer.bound, 'proof');
+      this.#soFar.lower(answer.bound, 'proof');
       const chosen = answer.columns && chosenOf(grid, answer.columns);
       if (!chosen) return;
       if (fitsTogether(grid, chosen)) {
-        this.#take(outOfReduced(this.#inQuestion, chosen), 'proof');
+        this.#soFar.take(outOfReduced(this.#inQuestion, chosen), 'proof');
         return;
       }
       const more = restCuts(grid, chosen);
       if (more.length === 0 || !answer.proven) return;
       this.#cuts.push(...more);
     }
-  }
-
-  #take(chosen: Int32Array, phase: PlanPhase): void {
-    const board = new Board(this.#grid);
-    for (const option of chosen) if (option >= 0) board.place(option);
-    if (board.value > this.#value) {
-      this.#value = board.value;
-      this.#best = chosen;
-    }
-    this.#report(phase);
-  }
-
-  /** A bound on plans better than the best: with nothing better there is the best itself. */
-  #lower(bound: number, phase: PlanPhase): void {
-    const safe = Math.max(bound * (1 + 1e-9), this.#value);
-    if (safe >= this.#bound) return;
-    this.#bound = safe;
-    this.#report(phase);
-  }
-
-  #plan(): Plan {
-    const bound = Number.isFinite(this.#bound) ? this.#bound : null;
-    return planOf(this.#grid, this.#best, bound, this.control.provenWithin);
-  }
-
-  #report(phase: PlanPhase): void {
-    const plan = this.#plan();
-    this.control.onProgress(
-      {
-        phase,
-        placed: plan.slots.length,
-        worth: plan.worth,
-        objective: plan.objective,
-        bound: plan.bound,
-        gap: plan.gap,
-        elapsedMs: this.#elapsedMs(),
-      },
-      () => plan,
-    );
-  }
-
-  #ending(plan: Plan): PlanResult['ending'] {
-    if (plan.gap === 0) return 'proven';
-    if (plan.gap !== null && plan.gap <= this.control.gapGoal) return 'withinGap';
-    return this.control.stop() ? 'stopped' : 'timeLimit';
-  }
-
-  #cut(): boolean {
-    return this.control.stop() || this.#leftS() <= 0;
-  }
-
-  #over(): boolean {
-    return (
-      this.#cut() ||
-      gapOf(this.#value, this.#bound, this.control.provenWithin) <= this.control.gapGoal
-    );
-  }
-
-  #elapsedMs(): number {
-    return this.control.nowMs() - this.#startMs;
-  }
-
-  #leftS(): number {
-    return this.control.timeLimitS - this.#elapsedMs() / 1000;
   }
 }
 

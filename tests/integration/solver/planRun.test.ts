@@ -19,7 +19,7 @@ describe('a planning run in its thread', () => {
   });
 
   it('keeps the best plan when it is stopped', async () => {
-    const problem = crowdedProblem();
+    const problem = crowdedProblem(14);
     const run = startPlanRun(problem, {
       onProgress: ({ phase }) => {
         if (phase === 'bound') run.stop();
@@ -33,7 +33,7 @@ describe('a planning run in its thread', () => {
   });
 
   it('is ended by force when it does not stop, and its best plan is kept', async () => {
-    const problem = crowdedProblem();
+    const problem = crowdedProblem(14);
     const run = startPlanRun(problem, {
       graceS: 0,
       onProgress: () => {
@@ -47,7 +47,7 @@ describe('a planning run in its thread', () => {
   });
 
   it('ends at its time limit with what it has', async () => {
-    const problem = crowdedProblem();
+    const problem = crowdedProblem(14);
     const { ending, plan } = await startPlanRun(problem, { timeLimitS: 0.2 }).done;
     expect(ending).toBe('timeLimit');
     expect(obeys(problem, plan.slots)).toBe(true);

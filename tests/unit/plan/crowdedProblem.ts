@@ -4,7 +4,7 @@ import { HOUR_MS, MINUTE_MS } from '../../../src/domain/time/interval';
 import { START_MS } from './tinyProblems';
 
 /** Everybody wants everybody and there is room for half of it: no run is done with it at once. */
-export function crowdedProblem(stations = 18): PlanProblem {
+export function crowdedProblem(stations: number): PlanProblem {
   const numbers = new Numbers(99);
   const pairs = Array.from({ length: stations }, (_, a) =>
     Array.from({ length: stations - a - 1 }, (__, at) => [a, a + 1 + at] as const),

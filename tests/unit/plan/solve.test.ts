@@ -4,7 +4,8 @@ import { PlanProblemError } from '../../../src/domain/activity/plan/grid';
 import type { PlanProblem, PlanProgress } from '../../../src/domain/activity/plan/types';
 import { MINUTE_MS } from '../../../src/domain/time/interval';
 import { loadHighs, type Highs } from '../../../src/server/solver/highs';
-import { solvePlan, type SolveControl } from '../../../src/server/solver/solve';
+import { solvePlan } from '../../../src/server/solver/solve';
+import type { SolveControl } from '../../../src/server/solver/soFar';
 import { START_MS, bestByTrying, obeys, objectiveOf, tinyProblem } from './tinyProblems';
 
 let highs: Highs;
@@ -29,19 +30,21 @@ function solve(problem: PlanProblem, control: Partial<SolveControl> = {}) {
 const ROUNDING = 0.0001 * 40;
 
 describe('a plan of a tiny activity', () => {
-  it('is the best of all plans, and proven so', () => {
-    for (let seed = 1; seed <= 300; seed += 1) {
-      const problem = tinyProblem(seed);
-      const { plan, ending } = solve(problem);
-      expect(obeys(problem, plan.slots), `seed ${seed}`).toBe(true);
-      expect(ending, `seed ${seed}`).toBe('proven');
-      const best = bestByTrying(problem);
-      expect(Math.abs(plan.objective - best), `seed ${seed}`).toBeLessThan(ROUNDING);
-      expect(Math.abs(objectiveOf(problem, plan.slots) - best), `seed ${seed}`).toBeLessThan(
-        ROUNDING,
-      );
-    }
-  });
+  it.each([1, 41, 81, 121, 161, 201])(
+    'is the best of all plans, and proven so: from %i',
+    (from) => {
+      for (let seed = from; seed < from + 40; seed += 1) {
+        const problem = tinyProblem(seed);
+        const { plan, ending } = solve(problem);
+        expect(obeys(problem, plan.slots), `seed ${seed}`).toBe(true);
+        expect(ending, `seed ${seed}`).toBe('proven');
+        const best = bestByTrying(problem);
+        expect(Math.abs(plan.objective - best), `seed ${seed}`).toBeLessThan(ROUNDING);
+        const counted = objectiveOf(problem, plan.slots);
+        expect(Math.abs(counted - best), `seed ${seed}`).toBeLessThan(ROUNDING);
+      }
+    },
+  );
 
   it('leaves pinned slots where they are and is the best around them', () => {
     let pinnedOnce = 0;

@@ -29,7 +29,7 @@ export function marginOf(input: PlanInput, slot: PlanSlot): number | null {
         { callSign: second.callSign, site: second.site, setup: setups[1] },
       ],
       frequencyMhz: band.frequencyMhz,
-      mode: band.mode as ModeId,
+      mode: band.mode,
       timeMs: middleOfSlot({ startMs, endMs }),
     });
     return Math.round(10 * Math.min(...directions.map(({ marginDb }) => marginDb))) / 10;

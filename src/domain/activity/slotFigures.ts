@@ -1,6 +1,5 @@
 import { computeLink } from '../link/budget';
 import { LinkInputError } from '../link/inputError';
-import type { ModeId } from '../station/modes';
 import { MINUTE_MS } from '../time/interval';
 import { middleOfSlot } from '../sked/link';
 import type { PlanInput } from './plan/input';

@@ -47,6 +47,8 @@ export function TimetableGrid({ view, hold, chosen, onChoose }: Props) {
   );
   const target = here?.target ?? null;
   return (
+    // What scrolls must be reached with the keyboard.
+    // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
     <div className="tt-scroll" tabIndex={0} role="group" aria-label="Timetable, scrolls sideways">
       <svg width="0" height="0" className="tt-defs" aria-hidden="true">
         <defs>

@@ -422,6 +422,7 @@ export type StationRow = Selectable<StationTable>;
 export type NoiseRecordRow = Selectable<NoiseRecordTable>;
 export type SkedRow = Selectable<SkedTable>;
 export type SkedPartyRow = Selectable<SkedPartyTable>;
+export type SkedEventRow = Selectable<SkedEventTable>;
 export type OutboxRow = Selectable<OutboxTable>;
 export type ActivityRow = Selectable<ActivityTable>;
 export type ActivityRevisionRow = Selectable<ActivityRevisionTable>;

@@ -2,6 +2,7 @@ import { allPairs500x72h } from './allPairs';
 import { drag60days } from './drag';
 import { growth } from './growth';
 import { linkPair30d } from './link';
+import { plan100x1000, plan24x276, plan40x200, replan40x200 } from './plan';
 import { mailFaults200 } from './mailFaults';
 import { planLatency } from './planLatency';
 import { race10000 } from './race';
@@ -14,6 +15,10 @@ const BENCHES: readonly Bench[] = [
   growth,
   linkPair30d,
   drag60days,
+  plan40x200,
+  plan24x276,
+  plan100x1000,
+  replan40x200,
   mailFaults200,
   race10000,
   planLatency,

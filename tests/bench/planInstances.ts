@@ -5,6 +5,7 @@ import type {
   PlanInputWish,
 } from '../../src/domain/activity/plan/input';
 import { Numbers } from '../../src/domain/activity/plan/numbers';
+import { buildOptions } from '../../src/domain/activity/plan/options';
 import type { LinkSetup } from '../../src/domain/link/setup';
 import { expandUsableHours, type Weekday } from '../../src/domain/time/weeklyHours';
 import { HOUR_MS } from '../../src/domain/time/interval';
@@ -29,8 +30,8 @@ const BANDS: PlanBand[] = [
   { id: '1296', label: '1296 MHz', frequencyMhz: 1296.1, mode: 'q65-60c' },
 ];
 
-/** A weekend with the Moon far north; 48 hours from Saturday 00:00 UTC. */
-const START_MS = Date.UTC(2027, 1, Number(process.env['DAY'] ?? 13));
+/** 48 hours with the Moon near the equator, so that hours are scarce everywhere. */
+const START_MS = Date.UTC(2027, 1, 9);
 
 /**
  * An invented weekend, always the same for the same numbers: stations in Europe, the Americas, East Asia and Oceania
@@ -39,7 +40,7 @@ const START_MS = Date.UTC(2027, 1, Number(process.env['DAY'] ?? 13));
 export function planWeekend(stations: number, wishes: number | 'everyone', seed = 1): PlanInput {
   const numbers = new Numbers(seed);
   const roster = Array.from({ length: stations }, (_, index) => station(index, stations, numbers));
-  return {
+  const input: PlanInput = {
     startMs: START_MS,
     endMs: START_MS + 48 * HOUR_MS,
     rules: {
@@ -53,8 +54,11 @@ export function planWeekend(stations: number, wishes: number | 'everyone', seed 
     },
     bands: BANDS,
     stations: roster,
-    wishes: wishes === 'everyone' ? allPairs(roster, numbers) : somePairs(roster, wishes, numbers),
+    wishes: [],
   };
+  const asked =
+    wishes === 'everyone' ? allPairs(roster, numbers) : possiblePairs(input, wishes, numbers);
+  return { ...input, wishes: asked };
 }
 
 function between(numbers: Numbers, [from, to]: readonly [number, number]): number {
@@ -144,21 +148,14 @@ function allPairs(roster: readonly PlanInputStation[], numbers: Numbers): PlanIn
   return roster.flatMap((a, at) => roster.slice(at + 1).map((b) => wish(a, b, numbers)));
 }
 
-/** Different pairs that share a band, drawn by lot. */
-function somePairs(
-  roster: readonly PlanInputStation[],
-  count: number,
-  numbers: Numbers,
-): PlanInputWish[] {
-  const wishes = new Map<string, PlanInputWish>();
-  for (let tries = 0; wishes.size < count && tries < 100 * count; tries += 1) {
-    const one = numbers.below(roster.length);
-    const other = numbers.below(roster.length);
-    const a = roster[Math.min(one, other)]!;
-    const b = roster[Math.max(one, other)]!;
-    if (a === b || wishes.has(`${a.id}-${b.id}`)) continue;
-    if (!BANDS.some(({ id }) => a.setups[id] && b.setups[id])) continue;
-    wishes.set(`${a.id}-${b.id}`, wish(a, b, numbers));
-  }
-  return [...wishes.values()];
+/** So many different pairs that have at least one possible start, drawn by lot. */
+function possiblePairs(input: PlanInput, count: number, numbers: Numbers): PlanInputWish[] {
+  const drawn = allPairs(input.stations, numbers)
+    .map((one) => ({ one, place: numbers.word() }))
+    .sort((first, second) => first.place - second.place)
+    .map(({ one }) => one);
+  const options = buildOptions({ ...input, wishes: drawn });
+  const possible = drawn.filter((_, index) => options[index]!.length > 0);
+  if (possible.length < count) throw new Error(`Only ${possible.length} pairs are possible.`);
+  return possible.slice(0, count);
 }

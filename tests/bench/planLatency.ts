@@ -111,6 +111,7 @@ async function queueRun(db: Db, input: PlanInput): Promise<string> {
     keep: [],
     begun: [],
     weights: planWeights(DEFAULT_WEIGHTS),
+    favour: DEFAULT_WEIGHTS.favour,
     problem: null,
   };
   const id = 'bench-run';

@@ -52,6 +52,8 @@ export interface MipAnswer {
 }
 
 export interface MipControl extends HighsControl {
+  /** Ends when no more than this is between the best plan and the bound. */
+  within: number;
   onSolution: (columns: Float64Array) => void;
   onBound: (bound: number) => void;
 }
@@ -68,7 +70,11 @@ export function solveMip(
 ): MipAnswer {
   return highs.withModel((instance): MipAnswer => {
     pass(highs, instance, model, true);
-    instance.options.set({ mip_rel_gap: 0, mip_abs_gap: 0.5, time_limit: control.timeLimitS });
+    instance.options.set({
+      mip_rel_gap: 0,
+      mip_abs_gap: control.within,
+      time_limit: control.timeLimitS,
+    });
     instance.setSolution({ colValue: start });
     const types = highs.constants.callbackType;
     const result = instance.run({

@@ -1,4 +1,9 @@
-import { fitsTogether, gapOf, planOf } from '../../domain/activity/plan/answer';
+import {
+  PROVEN_WITHIN_UNITS,
+  fitsTogether,
+  gapOf,
+  planOf,
+} from '../../domain/activity/plan/answer';
 import { Board } from '../../domain/activity/plan/board';
 import { greedyBoard } from '../../domain/activity/plan/greedy';
 import { layGrid, type PlanGrid } from '../../domain/activity/plan/grid';
@@ -36,10 +41,18 @@ export interface SolveControl {
   timeLimitS: number;
   /** Ends once the gap is no greater. */
   gapGoal: number;
+  /** Units within which a plan counts as proven; absent: PROVEN_WITHIN_UNITS. */
+  provenWithin?: number;
 }
 
 /** Up to so many options the relaxation is solved before anything else is tried for long. */
 const SMALL = 12_000;
+/** Temperatures of annealing among what is still in question, units. */
+const HEATS = [
+  [3000, 20],
+  [1500, 100],
+  [800, 50],
+] as const;
 const PRICE_ROUNDS = 50;
 const CUT_ROUNDS = 30;
 
@@ -94,27 +107,26 @@ class Solver {
 
   #stages(): void {
     const options = this.#grid.optionWish.length;
-    const small = options <= SMALL;
     if (options === 0) {
       this.#lower(this.#value, 'bound');
       return;
     }
     this.#anneal(2000, 200, moves(options, 100_000) + 20 * options);
-    this.#price(small ? 200 : 1500);
-    this.#anneal(3000, 100, moves(options, 200_000) + 100 * options);
-    if (this.#over()) return;
-    if (!small) {
-      for (let round = 0; round < 3 && !this.#over(); round += 1) {
-        this.#anneal(3000, 50, 150 * options);
+    if (options > SMALL) {
+      this.#price(1500);
+      for (let round = 0; round < 4 && !this.#over(); round += 1) {
+        this.#anneal(3000, 50, 120 * options);
       }
     }
     this.#relax();
-    for (let round = 0; round < 4 && !this.#over(); round += 1) {
+    let idle = 0;
+    for (let round = 0; round < 8 && idle < 3 && !this.#over(); round += 1) {
       this.#reduce();
       const before = this.#value;
       const left = this.#inQuestion.options.length;
-      this.#anneal(1000, 20, moves(left, 100_000) + 50 * left);
-      if (this.#value === before && round > 0) break;
+      const [from, to] = HEATS[round % HEATS.length]!;
+      this.#anneal(from, to, moves(left, 200_000) + 100 * left);
+      idle = this.#value > before ? 0 : idle + 1;
     }
     this.#branch();
   }
@@ -198,6 +210,7 @@ class Solver {
       board.load(intoReduced(this.#inQuestion, this.#best));
       const answer = solveMip(this.highs, model, columnsOf(model, board), {
         timeLimitS: this.#leftS(),
+        within: (this.control.provenWithin ?? PROVEN_WITHIN_UNITS) / 2,
         stop: () => this.#cut(),
         onSolution: (columns) => {
           const chosen = chosenOf(grid, columns);
@@ -241,7 +254,8 @@ class Solver {
   }
 
   #plan(): Plan {
-    return planOf(this.#grid, this.#best, Number.isFinite(this.#bound) ? this.#bound : null);
+    const bound = Number.isFinite(this.#bound) ? this.#bound : null;
+    return planOf(this.#grid, this.#best, bound, this.control.provenWithin);
   }
 
   #report(phase: PlanPhase): void {
@@ -271,7 +285,10 @@ class Solver {
   }
 
   #over(): boolean {
-    return this.#cut() || gapOf(this.#value, this.#bound) <= this.control.gapGoal;
+    return (
+      this.#cut() ||
+      gapOf(this.#value, this.#bound, this.control.provenWithin) <= this.control.gapGoal
+    );
   }
 
   #elapsedMs(): number {

@@ -18,6 +18,7 @@ const CONTROL: SolveControl = {
   onProgress: () => undefined,
   timeLimitS: 1000,
   gapGoal: 0,
+  provenWithin: 1,
 };
 
 function solve(problem: PlanProblem, control: Partial<SolveControl> = {}) {

@@ -3,7 +3,12 @@ import { UNITS, slotOf, type PlanGrid } from './grid';
 import type { Plan } from './types';
 
 /** The plan that the wishes' options make, everything counted anew. @param boundUnits null: not known. */
-export function planOf(grid: PlanGrid, chosen: Int32Array, boundUnits: number | null): Plan {
+export function planOf(
+  grid: PlanGrid,
+  chosen: Int32Array,
+  boundUnits: number | null,
+  within = PROVEN_WITHIN_UNITS,
+): Plan {
   const board = new Board(grid);
   let worth = 0;
   for (const option of chosen) {
@@ -19,7 +24,7 @@ export function planOf(grid: PlanGrid, chosen: Int32Array, boundUnits: number | 
       const chance = Math.round((100 * grid.optionWorth[option]!) / (UNITS * priority)) / 100;
       return { ...slotOf(grid, option), chance };
     });
-  const gap = boundUnits === null ? null : gapOf(board.value, boundUnits);
+  const gap = boundUnits === null ? null : gapOf(board.value, boundUnits, within);
   return {
     slots,
     worth: worth / UNITS,
@@ -29,9 +34,15 @@ export function planOf(grid: PlanGrid, chosen: Int32Array, boundUnits: number | 
   };
 }
 
-/** (bound − value) / bound; less than one unit is none. */
-export function gapOf(value: number, bound: number): number {
-  return bound - value < 1 - 1e-6 ? 0 : (bound - value) / bound;
+/**
+ * A plan counts as proven when no other can be better by so many units: half of the least difference that the chance of
+ * one contact can make. What is left below that is how evenly contacts that are worth the same are spread.
+ */
+export const PROVEN_WITHIN_UNITS = UNITS * 0.005;
+
+/** (bound − value) / bound; 0 where less than `within` units are left. */
+export function gapOf(value: number, bound: number, within = PROVEN_WITHIN_UNITS): number {
+  return bound - value < within - 1e-6 ? 0 : (bound - value) / bound;
 }
 
 /** Whether the options can stand together: every rule that the board knows, asked one by one. */

@@ -6,6 +6,7 @@ import type { PlanCheck, PlanViolation, ViolationKind } from './findings';
 import type { PlanInput, PlanInputStation, PlanInputWish } from './input';
 import { moonObstacle } from './moonObstacle';
 import type { PlanSlot } from './types';
+import { contacts } from './words';
 
 /** What is to be checked. */
 export interface ClaimedPlan {
@@ -193,7 +194,7 @@ class Checker {
     if (own.length > station.most) {
       this.#add(
         'tooMany',
-        `${callSign} has ${own.length} contacts, more than the ${station.most} it wants at most.`,
+        `${callSign} has ${contacts(own.length)}, more than the ${station.most} it wants at most.`,
         own.map(({ slot }) => slot),
       );
     }
@@ -207,7 +208,7 @@ class Checker {
       if (rules.mostInARow > 0 && run.length === rules.mostInARow + 1) {
         this.#add(
           'rest',
-          `${callSign} has more than ${rules.mostInARow} contacts from ${formatUtc(run[0]!.slot.startMs)} on without a pause of ${rules.leastPauseMinutes} min.`,
+          `${callSign} has more than ${contacts(rules.mostInARow)} from ${formatUtc(run[0]!.slot.startMs)} on without a pause of ${rules.leastPauseMinutes} min.`,
           run.map(({ slot }) => slot),
         );
       }

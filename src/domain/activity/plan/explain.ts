@@ -1,8 +1,8 @@
-import { formatNumber } from '../../time/format';
 import type { LeftOut, LeftOutReason } from './findings';
 import type { PlanInput, PlanInputStation, PlanInputWish } from './input';
+import { contacts } from './words';
 import { noOptionWords } from './noOption';
-import { buildOptions } from './options';
+import { PairChances, buildOptions } from './options';
 import { remediesFor } from './remedies';
 import { Standing, type StandingObstacle } from './standing';
 import type { PlanOption, PlanSlot } from './types';
@@ -14,6 +14,7 @@ export interface OpenWish {
   b: PlanInputStation;
   /** Starts that the windows allow. */
   options: readonly PlanOption[];
+  chances: PairChances;
 }
 
 /**
@@ -24,13 +25,14 @@ export function explainLeftOut(input: PlanInput, slots: readonly PlanSlot[]): Le
   const placed = new Set(slots.map(({ wishId }) => wishId));
   const stations = new Map(input.stations.map((station) => [station.id, station]));
   const open = input.wishes.filter(({ id }) => !placed.has(id));
-  const options = buildOptions({ ...input, wishes: open });
+  const chances = new PairChances(input);
+  const options = buildOptions({ ...input, wishes: open }, chances);
   const standing = new Standing(input, slots);
   return open.flatMap((wish, index) => {
     const a = stations.get(wish.a);
     const b = stations.get(wish.b);
     if (!a || !b) return [];
-    return explain(input, standing, slots, { wish, a, b, options: options[index]! });
+    return explain(input, standing, slots, { wish, a, b, options: options[index]!, chances });
   });
 }
 
@@ -88,7 +90,7 @@ function takenWords(
     taken > 0 ? `${taken} taken by earlier wishes` : null,
     change > 0 ? `at ${change} there is no time to change band` : null,
     rest > 0
-      ? `at ${rest} somebody would have more than ${rules.mostInARow} contacts in a row`
+      ? `at ${rest} somebody would have more than ${contacts(rules.mostInARow)} in a row`
       : null,
   ].filter((part) => part !== null);
   return { reason: rest > 0 ? 'rest' : 'bandChange', sentence: `${starts}: ${parts.join(', ')}.` };
@@ -101,8 +103,4 @@ function worst(obstacles: readonly StandingObstacle[]): LeftOutReason {
   if (kinds.has('bandChange')) return 'bandChange';
   if (kinds.has('rest')) return 'rest';
   return 'free';
-}
-
-export function contacts(count: number): string {
-  return count === 1 ? '1 contact' : `${formatNumber(count)} contacts`;
 }

@@ -10,9 +10,10 @@ import { buildOptions, startsWithin, windowStation } from './options';
 /** Why a wish has no start at all: the first of band, Moon, limits, hours, length and chance that leaves none. */
 export function noOptionWords(
   input: PlanInput,
-  { wish, a, b }: OpenWish,
+  open: OpenWish,
 ): Pick<LeftOut, 'reason' | 'sentence'> {
   const { rules } = input;
+  const { wish, a, b } = open;
   if (a.never.includes(b.id) || b.never.includes(a.id)) {
     return {
       reason: 'never',
@@ -47,7 +48,7 @@ export function noOptionWords(
   if (!windows.some((window) => startsWithin(window, input.startMs, rules).length > 0)) {
     return { reason: 'noWindow', sentence: tooShortSentence(windows, rules) };
   }
-  return { reason: 'lowChance', sentence: lowChanceSentence(input, { wish, a, b, options: [] }) };
+  return { reason: 'lowChance', sentence: lowChanceSentence(input, open) };
 }
 
 /** "The Moon is never above 10° for both.", or which other limit takes most of the hours in which it is up. */
@@ -88,9 +89,9 @@ function tooShortSentence(windows: readonly Interval[], rules: PlanRules): strin
     : `The longest common window is ${formatDuration(longestMs)}; no slot of ${rules.slotMinutes} min that begins on a step of ${rules.gridMinutes} min fits into it.`;
 }
 
-function lowChanceSentence(input: PlanInput, { wish }: OpenWish): string {
+function lowChanceSentence(input: PlanInput, { wish, chances }: OpenWish): string {
   const rules = { ...input.rules, leastChance: 0 };
-  const [options] = buildOptions({ ...input, rules, wishes: [wish] });
+  const [options] = buildOptions({ ...input, rules, wishes: [wish] }, chances);
   const best = Math.max(0, ...(options ?? []).map(({ chance }) => chance));
   if (best === 0) return 'In every common window the signal is too weak: the chance is under 1 %.';
   return `The best chance is ${formatNumber(100 * best)} %, less than the ${formatNumber(100 * input.rules.leastChance)} % that you ask for.`;

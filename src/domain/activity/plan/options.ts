@@ -53,14 +53,17 @@ export function buildProblem(input: PlanInput, start: PlanStart = {}): PlanProbl
   };
 }
 
-/** The options of every wish, in the order of the wishes; each list by band, then by time. */
-export function buildOptions(input: PlanInput): PlanOption[][] {
+/**
+ * The options of every wish, in the order of the wishes; each list by band, then by time.
+ * @param kept chances of the same activity; hand in the same one to ask for a pair again and again.
+ */
+export function buildOptions(input: PlanInput, kept?: PairChances): PlanOption[][] {
   const { rules, stations, wishes } = input;
   const options: PlanOption[][] = wishes.map(() => []);
   const asked = wishesByPair(input);
   if (asked.size === 0 || input.endMs <= input.startMs) return options;
   const span = { startMs: input.startMs, endMs: input.endMs };
-  const chances = new PairChances(input.bands, rules, buildMoonTable(span));
+  const chances = kept ?? new PairChances(input);
   const seen = seenTimes(
     span,
     stations.map((station) => windowStation(station, rules)),
@@ -138,18 +141,24 @@ function optionsAt(
 
 /** Chances of one pair after the other, each instant of the grid computed once. */
 export class PairChances {
+  readonly #bands: readonly PlanBand[];
+  readonly #rules: PlanRules;
+  readonly #table: MoonTable;
   readonly #moments = new Map<string, LinkMoment | null>();
   readonly #at = new Map<string, Map<number, number>>();
   #pair: readonly [PlanInputStation, PlanInputStation] | null = null;
 
-  constructor(
-    readonly bands: readonly PlanBand[],
-    readonly rules: PlanRules,
-    readonly table: MoonTable,
-  ) {}
+  constructor({ bands, rules, startMs, endMs }: PlanInput) {
+    this.#bands = bands;
+    this.#rules = rules;
+    this.#table = buildMoonTable({ startMs, endMs });
+  }
 
+  /** What was computed is kept where place and equipment are those of the pair before. */
   take(first: PlanInputStation, second: PlanInputStation): void {
+    const before = this.#pair;
     this.#pair = [first, second];
+    if (before && sameLink(before[0], first) && sameLink(before[1], second)) return;
     this.#moments.clear();
     this.#at.clear();
   }
@@ -161,7 +170,7 @@ export class PairChances {
   of(band: string, startMs: number): number | null {
     const moment = this.#moment(band);
     if (!moment) return null;
-    const { gridMinutes, slotMinutes } = this.rules;
+    const { gridMinutes, slotMinutes } = this.#rules;
     const steps = Math.round(slotMinutes / gridMinutes);
     let sum = 0;
     for (let step = 0; step <= steps; step += 1) {
@@ -192,7 +201,7 @@ export class PairChances {
   }
 
   #evaluate(bandId: string): LinkMoment | null {
-    const band = this.bands.find(({ id }) => id === bandId);
+    const band = this.#bands.find(({ id }) => id === bandId);
     const [first, second] = this.#pair!;
     const firstSetup = first.setups[bandId];
     const secondSetup = second.setups[bandId];
@@ -205,11 +214,15 @@ export class PairChances {
         ],
         band.frequencyMhz,
         band.mode,
-        { chance: { slotMinutes: this.rules.slotMinutes } },
-      ).over(this.table);
+        { chance: { slotMinutes: this.#rules.slotMinutes } },
+      ).over(this.#table);
     } catch (error) {
       if (error instanceof LinkInputError) return null;
       throw error;
     }
   }
+}
+
+function sameLink(one: PlanInputStation, other: PlanInputStation): boolean {
+  return one.site === other.site && one.setups === other.setups;
 }

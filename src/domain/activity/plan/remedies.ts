@@ -36,13 +36,13 @@ type Fits = (option: PlanOption) => boolean;
 
 function optionsWith(
   input: PlanInput,
-  { wish }: OpenWish,
+  { wish, chances }: OpenWish,
   change: Partial<PlanInput>,
   bands = wish.bands,
 ): PlanOption[] {
   const changed = { ...input, ...change };
   const stations = changed.stations.filter(({ id }) => id === wish.a || id === wish.b);
-  return buildOptions({ ...changed, stations, wishes: [{ ...wish, bands }] })[0] ?? [];
+  return buildOptions({ ...changed, stations, wishes: [{ ...wish, bands }] }, chances)[0] ?? [];
 }
 
 /** The option with the best chance that fits; the earliest of those. */

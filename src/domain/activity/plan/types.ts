@@ -85,7 +85,7 @@ export interface Plan {
   objective: number;
   /** No plan can have a greater objective; null: not known yet. */
   bound: number | null;
-  /** (bound − objective) / bound; 0: proven to be the best. */
+  /** (bound − objective) / bound; 0: proven, no plan is better by half a hundredth of a contact's chance. */
   gap: number | null;
 }
 

@@ -111,7 +111,6 @@ async function queueRun(db: Db, input: PlanInput): Promise<string> {
     keep: [],
     begun: [],
     weights: planWeights(DEFAULT_WEIGHTS),
-    favour: DEFAULT_WEIGHTS.favour,
     problem: null,
   };
   const id = 'bench-run';

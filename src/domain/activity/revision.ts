@@ -69,6 +69,24 @@ export function changesAnything(diff: RevisionDiff): boolean {
   return diff.added.length + diff.removed.length + diff.moved.length > 0;
 }
 
+/** Slots of one station that overlap, as pairs; an empty list is what a plan must have. */
+export function overlapsOf<S extends RevisionSlot>(
+  slots: readonly S[],
+): { stationId: string; first: S; second: S }[] {
+  const found: { stationId: string; first: S; second: S }[] = [];
+  const byStation = new Map<string, S[]>();
+  for (const slot of inTime(slots)) {
+    for (const stationId of [slot.stationA, slot.stationB]) {
+      const earlier = byStation.get(stationId) ?? [];
+      for (const first of earlier) {
+        if (first.endMs > slot.startMs) found.push({ stationId, first, second: slot });
+      }
+      byStation.set(stationId, [...earlier, slot]);
+    }
+  }
+  return found;
+}
+
 function inTime<S extends RevisionSlot>(slots: readonly S[]): S[] {
   return [...slots].sort((a, b) => a.startMs - b.startMs || compareText(slotKey(a), slotKey(b)));
 }

@@ -4,6 +4,7 @@ import {
   changesAnything,
   diffOfStation,
   diffRevisions,
+  overlapsOf,
   slotKey,
   type RevisionSlot,
 } from '~/domain/activity/revision';
@@ -85,5 +86,18 @@ describe('the difference of two revisions', () => {
         expect(back.moved.map(({ after }) => after)).toHaveLength(there.moved.length);
       }),
     );
+  });
+});
+
+describe('overlaps of a plan', () => {
+  it('are found at the station that has both', () => {
+    const first = slot('a', 'b', 1);
+    const second = { ...slot('a', 'c', 1), startMs: first.endMs - 1, endMs: first.endMs + HOUR_MS };
+    expect(overlapsOf([second, first])).toEqual([{ stationId: 'a', first, second }]);
+  });
+
+  it('are none where a slot begins as another ends', () => {
+    const first = slot('a', 'b', 1);
+    expect(overlapsOf([first, { ...slot('a', 'c', 1), startMs: first.endMs }])).toEqual([]);
   });
 });

@@ -26,8 +26,10 @@ export async function newestRun(db: Db | Tx, activityId: string): Promise<RunHea
       'ended_at',
     ])
     .where('activity_id', '=', activityId)
+    // One that is under way is the newest, even when the clock was set back since the one before.
+    .orderBy(sql`ended_at IS NULL`, 'desc')
     .orderBy('asked_at', 'desc')
-    .orderBy('id')
+    .orderBy(sql`rowid`, 'desc')
     .limit(1)
     .executeTakeFirst();
   return row ?? null;

@@ -1,6 +1,5 @@
 import { computeLink } from '../link/budget';
 import { LinkInputError } from '../link/inputError';
-import type { ModeId } from '../station/modes';
 import { MINUTE_MS } from '../time/interval';
 import { middleOfSlot } from '../sked/link';
 import type { PlanInput } from './plan/input';
@@ -29,7 +28,7 @@ export function marginOf(input: PlanInput, slot: PlanSlot): number | null {
         { callSign: second.callSign, site: second.site, setup: setups[1] },
       ],
       frequencyMhz: band.frequencyMhz,
-      mode: band.mode as ModeId,
+      mode: band.mode,
       timeMs: middleOfSlot({ startMs, endMs }),
     });
     return Math.round(10 * Math.min(...directions.map(({ marginDb }) => marginDb))) / 10;

@@ -23,7 +23,10 @@ const path = geoPath(projection).digits(1);
 export function PlanMap({ span, plan }: Props) {
   const [coast, setCoast] = useState<FeatureCollection | null>(loadedLand);
   const steps = Math.floor((span.endMs - span.startMs) / STEP_MS);
-  const [step, setStep] = useState(Math.floor(steps / 2));
+  const [step, setStep] = useState(() => firstStep(span, plan.slots));
+  // Drawn in the browser only: two machines need not agree on the last digit of a projection.
+  const [here, setHere] = useState(false);
+  useEffect(() => setHere(true), []);
   useEffect(() => {
     let stays = true;
     loadLand().then(
@@ -59,6 +62,14 @@ export function PlanMap({ span, plan }: Props) {
   const overhead = projection([footprint.longitudeDeg, footprint.latitudeDeg]) ?? [0, 0];
   const count = seen.filter(Boolean).length;
   const sentence = `${formatUtc(atMs)}: the Moon is overhead at ${formatPosition(footprint, 0)} and above the horizon of ${count} of ${plan.stations.length} stations. ${active.length === 0 ? 'No slot then.' : `${active.length} ${active.length === 1 ? 'slot' : 'slots'} then: ${active.map(({ first, second }) => `${plan.stations[first]!.callSign} with ${plan.stations[second]!.callSign}`).join(', ')}.`}`;
+  if (!here) {
+    return (
+      <figure className="m-0 grid gap-2">
+        <svg viewBox={`0 0 ${WIDTH} ${HEIGHT}`} className="chart map" aria-hidden="true" />
+        <figcaption>{sentence}</figcaption>
+      </figure>
+    );
+  }
   return (
     <figure className="m-0 grid gap-2">
       <svg
@@ -121,4 +132,11 @@ export function PlanMap({ span, plan }: Props) {
       </p>
     </figure>
   );
+}
+
+/** The hour of the first slot, else the middle of the activity. */
+function firstStep(span: Interval, slots: readonly Interval[]): number {
+  const firstMs = Math.min(...slots.map(({ startMs }) => startMs));
+  const atMs = Number.isFinite(firstMs) ? firstMs : (span.startMs + span.endMs) / 2;
+  return Math.floor((atMs - span.startMs) / STEP_MS);
 }

@@ -1,3 +1,4 @@
+import { setMaxListeners } from 'node:events';
 import { log } from '../log';
 
 export interface Job {
@@ -15,6 +16,8 @@ export interface Job {
  */
 export function startJobs(jobs: readonly Job[]): () => Promise<void> {
   const stopping = new AbortController();
+  // Every loop that pauses listens to it.
+  setMaxListeners(jobs.length + 1, stopping.signal);
   const loops = jobs.map((job) => loop(job, stopping.signal));
   return async () => {
     stopping.abort();

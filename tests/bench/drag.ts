@@ -8,7 +8,7 @@ const STEPS = 40;
 const WARM_UP = 20;
 /** Of the thumb, whose middle stays so far from the ends of the track. */
 const THUMB_PX = 16;
-const BROWSER = {
+export const BROWSER = {
   executablePath: process.env['CHROMIUM'] ?? '/usr/bin/chromium',
   args: [
     '--no-sandbox',

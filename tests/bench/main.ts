@@ -7,6 +7,7 @@ import { mailFaults200 } from './mailFaults';
 import { planLatency } from './planLatency';
 import { race10000 } from './race';
 import { mergeResults, printResults, type Bench } from './results';
+import { timetableDrag } from './timetableDrag';
 import { windowsPair30d } from './windowsPair30d';
 
 const BENCHES: readonly Bench[] = [
@@ -22,6 +23,7 @@ const BENCHES: readonly Bench[] = [
   mailFaults200,
   race10000,
   planLatency,
+  timetableDrag,
 ];
 
 const filter = process.argv[2] ?? '';

@@ -1,11 +1,9 @@
-import { existsSync } from 'node:fs';
 import { setTimeout as sleep } from 'node:timers/promises';
-import type { SavedRun } from '../../src/domain/activity/run';
-import { DEFAULT_WEIGHTS, planWeights } from '../../src/domain/activity/weights';
-import type { PlanInput } from '../../src/domain/activity/plan/input';
-import { openDatabase, type Db } from '../../src/server/db/connection';
+import { ensureBuilt } from '../../src/cli/lib/build.mjs';
+import { openDatabase } from '../../src/server/db/connection';
 import { startServer } from '../e2e/support/server';
 import { planWeekend } from './planInstances';
+import { queueRun } from './planQueue';
 import type { Bench, BenchResult } from './results';
 
 const STATIONS = 40;
@@ -22,10 +20,7 @@ const NAME = 'plan.webLatencyWhileSolvingMs';
 export const planLatency: Bench = {
   name: NAME,
   run: async (): Promise<BenchResult[]> => {
-    if (!existsSync('dist/server/entry.mjs')) {
-      console.log(`${NAME}: left out, there is no dist/. Build first: npm run build.`);
-      return [];
-    }
+    await ensureBuilt();
     const server = await startServer({ demo: true });
     const db = openDatabase(server.databaseFile);
     try {
@@ -93,43 +88,4 @@ async function askUntil(url: string, over: () => Promise<boolean>): Promise<numb
 function p95(values: readonly number[]): number {
   const sorted = [...values].sort((a, b) => a - b);
   return sorted[Math.min(sorted.length - 1, Math.floor(sorted.length * 0.95))]!;
-}
-
-/** A run for the demo's activity, with stations of these ids, so that its plan can become a draft. */
-async function queueRun(db: Db, input: PlanInput): Promise<string> {
-  const activity = await db.selectFrom('activity').selectAll().executeTakeFirstOrThrow();
-  const like = await db.selectFrom('station').selectAll().executeTakeFirstOrThrow();
-  for (const { id, callSign } of input.stations) {
-    await db
-      .insertInto('station')
-      .values({ ...like, id, call_sign: `Q${callSign}`.slice(0, 12), listed: 0, guest: 1 })
-      .execute();
-  }
-  const saved: SavedRun = {
-    input,
-    pinned: [],
-    keep: [],
-    begun: [],
-    weights: planWeights(DEFAULT_WEIGHTS),
-    problem: null,
-  };
-  const id = 'bench-run';
-  await db
-    .insertInto('plan_run')
-    .values({
-      id,
-      activity_id: activity.id,
-      state: 'queued',
-      problem_json: JSON.stringify(saved),
-      progress_json: null,
-      result_json: null,
-      error: null,
-      asked_by: activity.coordinator_id,
-      asked_at: Date.now(),
-      leased_until: null,
-      stop_asked_at: null,
-      ended_at: null,
-    })
-    .execute();
-  return id;
 }

@@ -1,6 +1,7 @@
 import type { PlanInput } from '../../src/domain/activity/plan/input';
 import type { SavedRun } from '../../src/domain/activity/run';
 import { DEFAULT_WEIGHTS, planWeights } from '../../src/domain/activity/weights';
+import { wishIdOf } from '../../src/server/activities/planInput';
 import type { Db } from '../../src/server/db/connection';
 
 /** A run for the demo's activity, with stations of these ids, so that its plan can become a draft. */
@@ -14,7 +15,10 @@ export async function queueRun(db: Db, input: PlanInput): Promise<string> {
       .execute();
   }
   const saved: SavedRun = {
-    input,
+    input: {
+      ...input,
+      wishes: input.wishes.map((wish) => ({ ...wish, id: wishIdOf(wish.a, wish.b) })),
+    },
     pinned: [],
     keep: [],
     begun: [],

@@ -2,6 +2,7 @@ import { checkPlan } from '../../domain/activity/plan/check';
 import type { PlanInput } from '../../domain/activity/plan/input';
 import type { RevisionSlot } from '../../domain/activity/revision';
 import { formatUtcRange } from '../../domain/time/format';
+import { MINUTE_MS } from '../../domain/time/interval';
 import type { Services } from '../services';
 import { planInput, wishIdOf } from './planInput';
 import type { ActivityRow } from './records';
@@ -28,7 +29,14 @@ export async function planFaults(
       startMs: slot.startMs,
     })),
   });
+  const slotMs = input.rules.slotMinutes * MINUTE_MS;
+  const other = coming.find(({ startMs, endMs }) => endMs - startMs !== slotMs);
   return [
+    ...(other
+      ? [
+          `The slots of this plan are ${(other.endMs - other.startMs) / MINUTE_MS} minutes long, the settings now say ${input.rules.slotMinutes}. Plan anew.`,
+        ]
+      : []),
     ...(await unwishedWords(services, input, unwished)),
     ...violations.map(({ sentence }) => sentence),
   ];

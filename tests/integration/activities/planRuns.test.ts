@@ -153,6 +153,22 @@ describe('the plan and who may do what', () => {
     expect(await getActivity(services, null, slug)).toMatchObject({ editor: false, own: [] });
   });
 
+  it('is not published with slots of another length than the settings now say', async () => {
+    await plan(world);
+    const { row, slots } = await draftOf(world);
+    const minutes = (slots[0]!.endMs - slots[0]!.startMs) / 60_000;
+    await world.services.db
+      .updateTable('activity')
+      .set({ slot_minutes: 2 * minutes })
+      .execute();
+    await expect(
+      publishRevision(world.services, world.marit, world.slug, { version: row.version, note: '' }),
+    ).rejects.toThrow(
+      `The slots of this plan are ${minutes} minutes long, the settings now say ${2 * minutes}. Plan anew.`,
+    );
+    expect((await loadRevision(world.services.db, world.activityId, 'draft'))?.row).toEqual(row);
+  });
+
   it('stands when the roster is numbered anew', async () => {
     await plan(world);
     const { services, marit, slug } = world;

@@ -10,15 +10,15 @@ const NARROW = 520;
 
 interface Props {
   month: RasterMonth;
-  /** The slot as it stands, and as the form has it now. */
-  slot: Interval;
+  /** The slot as it stands. */
+  standing: Interval;
   lengthMs: number;
   /** Page of the move; the start that is pressed comes as its query. */
   movePath: string;
 }
 
 /** The common windows of the coming weeks; pressing one puts its time into the form. */
-export default function MoveRaster({ month, slot, lengthMs, movePath }: Props) {
+export default function MoveRaster({ month, standing, lengthMs, movePath }: Props) {
   const [box, width] = useWidth<HTMLDivElement>();
   const { layers, nowMs, stations } = month;
   const choose = useCallback(
@@ -43,7 +43,7 @@ export default function MoveRaster({ month, slot, lengthMs, movePath }: Props) {
             layers={layers}
             taken={month.taken}
             nowMs={nowMs}
-            slot={slot}
+            slot={standing}
             label={`Common windows of ${stations.map(({ callSign }) => callSign).join(' and ')} for ${month.days} days, one row a day. Press one to choose its time.`}
             onChoose={choose}
           />

@@ -1,5 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { RevisionSlot } from '~/domain/activity/revision';
+import { overlapsOf } from '~/domain/activity/revision';
 import { placesOf } from '~/domain/activity/timetable';
 import { leftOutNow, type TimetableView } from '~/domain/activity/timetableView';
 import { totalsOf } from '~/domain/activity/planView';
@@ -29,18 +29,6 @@ import {
   timetable,
   type PlanWorld,
 } from './planWorld';
-
-/** Pairs of slots that overlap at a station. */
-function overlapsOf(slots: readonly RevisionSlot[]): [RevisionSlot, RevisionSlot][] {
-  return slots.flatMap((one, index) =>
-    slots.slice(index + 1).flatMap((other): [RevisionSlot, RevisionSlot][] => {
-      const both = [other.stationA, other.stationB];
-      const shared = both.includes(one.stationA) || both.includes(one.stationB);
-      const meet = one.startMs < other.endMs && other.startMs < one.endMs;
-      return shared && meet ? [[one, other]] : [];
-    }),
-  );
-}
 
 let world: PlanWorld;
 beforeAll(async () => {
